@@ -1,0 +1,26 @@
+/* Edits: pure functions from a plan to a new plan that shares everything untouched.
+ * The item given is taken over (transfer full) and is immutable from then on. Indices must be
+ * valid; -1 where stated appends. */
+#pragma once
+
+#include "plan.h"
+
+const UtPlan *ut_plan_with_title (const UtPlan *plan, const char *title);
+const UtPlan *ut_plan_with_carrier (const UtPlan *plan, UtCarrier *carrier);
+const UtPlan *ut_plan_with_propagation (const UtPlan *plan, UtPropagation *propagation);
+const UtPlan *ut_plan_with_cell (const UtPlan *plan, int index, UtCell *cell); /* -1: append */
+const UtPlan *
+ut_plan_with_terminal (const UtPlan *plan, int index, UtTerminal *terminal); /* -1: append */
+const UtPlan *
+ut_plan_with_storey (const UtPlan *plan, int index, UtStorey *storey); /* -1: append */
+const UtPlan *ut_plan_with_construction (const UtPlan *plan,
+                                         int index,
+                                         UtConstruction *construction); /* -1: append */
+const UtPlan *ut_plan_without_cell (
+    const UtPlan *plan,
+    int index); /* terminals that named it become automatic; its measured gains go */
+const UtPlan *ut_plan_without_terminal (const UtPlan *plan, int index); /* its measured gains go */
+
+/* The first free id of the form prefix + number ("C5"). Transfer full. */
+char *ut_plan_free_cell_id (const UtPlan *plan);
+char *ut_plan_free_terminal_id (const UtPlan *plan);
