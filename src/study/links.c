@@ -1,0 +1,159 @@
+#include "links.h"
+
+#include <math.h>
+
+#include "decibel.h"
+#include "noise.h"
+
+double
+ut_channel_coupling (const UtCarrier *carrier, int one_channel, int other_channel)
+{
+  guint apart = (guint) ABS (one_channel - other_channel);
+  const GArray *isolation_db = carrier->channel_isolation_db;
+
+  if (apart == 0)
+    return 1;
+  if (isolation_db->len == 0)
+    return 0;
+  return ut_ratio_from_db (-g_array_index (isolation_db, double, MIN (apart, isolation_db->len) - 1));
+}
+
+double
+ut_radio_limit_mw (const UtPlan *plan, const UtRadio *radio)
+{
+  double limit_dbm = radio->power_max_dbm;
+
+  if (!isnan (plan->carrier->eirp_limit_dbm))
+    {
+      int antenna = ut_plan_find_antenna (plan, radio->antenna);
+      double gain_dbi = antenna < 0 ? 0 : ut_plan_antenna (plan, (guint) antenna)->gain_dbi;
+
+      limit_dbm = MIN (limit_dbm, plan->carrier->eirp_limit_dbm - gain_dbi + radio->feeder_loss_db);
+    }
+  return ut_mw_from_dbm (limit_dbm);
+}
+
+/* The cell that serves a terminal: the named one if it is on, else the one on with the largest gain, the first of equals. */
+static int
+serving_cell (const UtGains *gains, guint terminal_index)
+{
+  const UtPlan *plan = gains->plan;
+  const UtTerminal *terminal = ut_plan_terminal (plan, terminal_index);
+  int best = -1;
+
+  if (terminal->cell != NULL)
+    {
+      int named = ut_plan_find_cell (plan, terminal->cell);
+      return ut_plan_cell (plan, (guint) named)->radio.on ? named : -1;
+    }
+  for (guint c = 0; c < gains->n_cells; c++)
+    if (ut_plan_cell (plan, c)->radio.on
+        && (best < 0
+            || gains->gain_db[ut_gains_at (gains, terminal_index, c)]
+                 > gains->gain_db[ut_gains_at (gains, terminal_index, (guint) best)]))
+      best = (int) c;
+  return best;
+}
+
+static double
+noise_mw (const UtCarrier *carrier, const UtRadio *receiver)
+{
+  double noise_dbm = 0;
+  UtRadioStatus status = ut_noise_dbm (carrier->noise_temperature_k,
+                                       carrier->bandwidth_mhz * 1e6,
+                                       receiver->noise_figure_db,
+                                       &noise_dbm);
+
+  g_assert (status == UT_RADIO_OK); /* the plan was checked */
+  return ut_mw_from_dbm (noise_dbm);
+}
+
+static UtLink
+make_link (const UtLinks *links, guint terminal_index, double target_db, double level_dbm)
+{
+  const UtPlan *plan = links->gains->plan;
+  const UtTerminal *terminal = ut_plan_terminal (plan, terminal_index);
+  gboolean down = links->direction == UT_DIRECTION_DOWN;
+  UtLink link = {
+    .terminal = terminal_index,
+    .cell = serving_cell (links->gains, terminal_index),
+    .target = ut_ratio_from_db (target_db + plan->carrier->margin_db),
+    .level_mw = isnan (level_dbm) ? 0 : ut_mw_from_dbm (level_dbm),
+  };
+
+  link.need = link.target / links->processing_gain;
+  if (link.cell < 0)
+    return link;
+  const UtRadio *cell = &ut_plan_cell (plan, (guint) link.cell)->radio;
+  const UtRadio *sender = down ? cell : &terminal->radio;
+  link.gain = links->gains->gain[ut_gains_at (links->gains, terminal_index, (guint) link.cell)];
+  link.noise_mw = noise_mw (plan->carrier, down ? &terminal->radio : cell);
+  link.minimum_mw = down && links->simultaneous ? 0 : ut_mw_from_dbm (sender->power_min_dbm);
+  link.limit_mw = ut_radio_limit_mw (plan, sender);
+  return link;
+}
+
+/* Numbers the unknowns: a cell each in orthogonal sharing, a link each in simultaneous. */
+static void
+number_unknowns (UtLinks *links)
+{
+  for (guint i = 0; i < links->links->len; i++)
+    {
+      int cell = ut_links_link (links, i)->cell;
+
+      links->link_unknown[i] = -1;
+      if (cell < 0)
+        continue;
+      links->n_served[cell]++;
+      if (links->simultaneous)
+        links->link_unknown[i] = (int) links->n_unknowns++;
+    }
+  for (guint c = 0; c < links->gains->n_cells; c++)
+    links->unknown[c] = !links->simultaneous && links->n_served[c] > 0 ? (int) links->n_unknowns++ : -1;
+}
+
+UtLinks *
+ut_links_new (const UtGains *gains, UtDirection direction)
+{
+  const UtPlan *plan = gains->plan;
+  UtLinks *links = g_new0 (UtLinks, 1);
+
+  links->gains = gains;
+  links->direction = direction;
+  links->simultaneous = plan->carrier->sharing == UT_SHARING_SIMULTANEOUS;
+  links->processing_gain = links->simultaneous ? ut_ratio_from_db (plan->carrier->processing_gain_db) : 1;
+  links->links = g_array_new (FALSE, FALSE, sizeof (UtLink));
+  for (guint t = 0; t < plan->terminals->len; t++)
+    {
+      const UtTerminal *terminal = ut_plan_terminal (plan, t);
+      gboolean down = direction == UT_DIRECTION_DOWN;
+      double target_db = down ? terminal->target_down_db : terminal->target_up_db;
+
+      if (terminal->radio.on && !isnan (target_db))
+        {
+          UtLink link = make_link (links, t, target_db, down ? terminal->level_down_dbm : terminal->level_up_dbm);
+          g_array_append_val (links->links, link);
+        }
+    }
+  links->n_served = g_new0 (guint, gains->n_cells);
+  links->unknown = g_new (int, gains->n_cells);
+  links->link_unknown = g_new (int, links->links->len);
+  number_unknowns (links);
+  return links;
+}
+
+void
+ut_links_free (UtLinks *links)
+{
+  g_array_unref (links->links);
+  g_free (links->n_served);
+  g_free (links->unknown);
+  g_free (links->link_unknown);
+  g_free (links);
+}
+
+gboolean
+ut_links_is_idle (const UtLinks *links, guint cell)
+{
+  return ut_plan_cell (links->gains->plan, cell)->radio.on && links->n_served[cell] == 0;
+}

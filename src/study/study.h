@@ -1,0 +1,107 @@
+/* A plan becomes an answer: verdict, headroom, powers and links.  An answer never changes once made. */
+#pragma once
+
+#include <gio/gio.h>
+
+#include "gains.h"
+#include "plan.h"
+
+typedef enum { UT_DIRECTION_DOWN, UT_DIRECTION_UP } UtDirection;
+
+typedef enum { UT_AIM_LEAST_POWER, UT_AIM_EQUAL_MARGIN, UT_AIM_FEWEST_DROPPED, UT_AIM_AS_SET } UtAim;
+
+typedef enum
+{
+  UT_VERDICT_MET,
+  UT_VERDICT_NOISE_LIMITED,
+  UT_VERDICT_LEVEL_LIMITED,
+  UT_VERDICT_INTERFERENCE_LIMITED,
+  UT_VERDICT_POWER_LIMITED,
+  UT_VERDICT_MINIMUM_LIMITED,
+  UT_VERDICT_STEP_LIMITED,
+} UtVerdict;
+
+typedef enum { UT_FALLBACK_NONE, UT_FALLBACK_EQUAL_MARGIN, UT_FALLBACK_CLIPPED_STEPS } UtFallback;
+
+typedef struct
+{
+  UtDirection direction;
+  UtAim aim;
+  double hold_db; /* >= 0: kept in hand on every target when powers are chosen */
+} UtQuestion;
+
+/* A link is marked met from here up. */
+#define UT_MARGIN_MET_DB -1e-6
+
+typedef struct
+{
+  const char *id; /* borrowed from the plan */
+  double dbm;
+} UtInterferer;
+
+/* NAN stands for null in every dB and dBm figure. */
+typedef struct
+{
+  guint terminal; /* index in the plan */
+  int cell;       /* index of the serving cell, -1: none */
+  double power_dbm;
+  double target_db;        /* design margin included */
+  double level_target_dbm; /* NAN: none asked for */
+  double sinr_db, margin_db;
+  double signal_dbm, noise_dbm, interference_dbm;
+  GArray *interferers; /* of UtInterferer, strongest first */
+  double reserve_db;
+  gboolean dropped;
+} UtLinkAnswer;
+
+typedef struct
+{
+  gboolean is_cell; /* else a terminal */
+  guint index;      /* in the plan */
+  gboolean idle;
+  double power_dbm, power_min_dbm, power_max_dbm, eirp_dbm;
+} UtTransmitterAnswer;
+
+typedef struct
+{
+  UtQuestion question;
+  UtGains *gains; /* with the plan they are of: gains->plan */
+  UtVerdict verdict;
+  UtFallback fallback;
+  double spectral_radius;  /* NAN: no live link */
+  double headroom_db;      /* NAN: no live link, or no common change of the targets helps */
+  double headroom_error_db; /* half-width of the certificate */
+  GArray *transmitters;    /* of UtTransmitterAnswer */
+  GArray *links;           /* of UtLinkAnswer, in file order */
+  GArray *limiting_group;  /* of guint: terminal indices; those without a cell first */
+  GArray *lacks_db;        /* of double, beside limiting_group: what a noise- or level-limited link lacks; NAN: no cell */
+  GArray *dropped;         /* of guint: terminal indices */
+  GPtrArray *warnings;     /* of char * */
+} UtStudy;
+
+/* previous: an answer about an earlier revision, or NULL; what still holds of its gains is used. */
+UtStudy *ut_study_new (const UtPlan *plan, const UtQuestion *question, const UtStudy *previous) G_GNUC_WARN_UNUSED_RESULT;
+/* The same for a thread: NULL as soon as it notices that it was cancelled. */
+UtStudy *ut_study_new_cancellable (const UtPlan *plan,
+                                   const UtQuestion *question,
+                                   const UtStudy *previous,
+                                   GCancellable *cancellable) G_GNUC_WARN_UNUSED_RESULT;
+
+UtStudy *ut_study_ref (UtStudy *study);
+void ut_study_unref (UtStudy *study);
+G_DEFINE_AUTOPTR_CLEANUP_FUNC (UtStudy, ut_study_unref)
+
+static inline const UtLinkAnswer *
+ut_study_link (const UtStudy *study, guint index)
+{
+  return &g_array_index (study->links, UtLinkAnswer, index);
+}
+
+static inline const UtTransmitterAnswer *
+ut_study_transmitter (const UtStudy *study, guint index)
+{
+  return &g_array_index (study->transmitters, UtTransmitterAnswer, index);
+}
+
+/* All of what was asked for with this aim is met: exit code 0. */
+gboolean ut_study_all_met (const UtStudy *study);
