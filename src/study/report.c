@@ -62,8 +62,9 @@ met_sentence (const UtStudy *study)
   g_autofree char *headroom = ut_report_figure (study->headroom_db, 1);
   g_autofree char *saved = ut_report_figure (fabs (saved_db (study)), 1);
   const char *more_or_less = saved_db (study) >= 0 ? "less" : "more";
-  g_autofree char *all = study->links->len == 1 ? g_strdup ("The one target")
-                                                : g_strdup_printf ("All %u targets", study->links->len);
+  g_autofree char *all = study->links->len == 1   ? g_strdup ("The one target")
+                         : study->links->len == 2 ? g_strdup ("Both targets")
+                                                  : g_strdup_printf ("All %u targets", study->links->len);
   const char *rise = study->links->len == 1 ? "it" : "every one";
 
   if (study->question.aim == UT_AIM_AS_SET)

@@ -1,7 +1,6 @@
 /* Everything of a plan that a ray can meet, prepared for crossing tests: wall pieces, openings, floors, slabs. */
 #pragma once
 
-#include "laws.h"
 #include "plan.h"
 
 typedef enum

@@ -1,0 +1,27 @@
+/* One painter of the plan for screen and paper: geometry in metres, marks and text in a unit of the target. */
+#pragma once
+
+#include <cairo.h>
+
+#include "palette.h"
+#include "study.h"
+
+typedef struct
+{
+  guint storey;              /* index: which storey is drawn */
+  double units_per_m;        /* target units (px or mm) a metre; the plan's y points up, the target's down */
+  double origin_x, origin_y; /* where the plan's (0, 0) lies, in target units */
+  double mark;               /* size of a cell's square in target units; lines and text follow from it */
+  const UtPalette *palette;
+  gboolean grid, walls;      /* what does not move: with walls the backdrop and the openings */
+  gboolean links, radios, labels;
+} UtPaintOptions;
+
+/* Size of the text that goes with a mark. */
+#define UT_TEXT_OF_MARK 1.2
+
+/* Extent of a storey in metres: walls, radios on it, backdrop; FALSE when there is nothing. */
+gboolean ut_plan_extent (const UtPlan *plan, guint storey, double *x0_m, double *y0_m, double *x1_m, double *y1_m);
+
+/* Paints what the options ask for. study may be NULL: then no links are drawn. It must be an answer to this very plan's radios. */
+void ut_paint_plan (cairo_t *cr, const UtPlan *plan, const UtStudy *study, const UtPaintOptions *options);

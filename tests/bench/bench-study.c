@@ -1,0 +1,156 @@
+/* Time of a whole answer (gains, verdict, powers, headroom) for 20 cells, 200 terminals and 1,000 wall pieces, and of the next one after
+ * one cell was moved, beside a recomputation of everything in the same run.  Prints medians and 95th percentiles; never fails for a time. */
+#include <math.h>
+#include <stdio.h>
+#include <stdlib.h>
+
+#include "plan-edit.h"
+#include "plan-read.h"
+#include "study.h"
+
+#define N_CELLS 20
+#define N_TERMINALS 200
+#define N_WALLS 250 /* of four pieces */
+#define RUNS 101
+
+static void
+add_item (GString *text, const char *before, gboolean first)
+{
+  g_string_append (text, first ? "" : ", ");
+  g_string_append (text, before);
+}
+
+/* A hall of 120 x 80 m with seeded random rooms; written as text so that reading is exercised too. */
+static const UtPlan *
+make_plan (GRand *rand)
+{
+  GString *text = g_string_new ("{\"undertone\": 1, \"carrier\": {\"frequency_mhz\": 3750, \"bandwidth_mhz\": 20, \"sharing\": \"orthogonal\"},"
+                                "\"propagation\": {\"base\": {\"law\": \"free-space\"}},"
+                                "\"constructions\": [{\"id\": \"stud\", \"layers\": [{\"material\": \"plasterboard\", \"thickness_mm\": 12.5},"
+                                "{\"material\": \"air\", \"thickness_mm\": 75}, {\"material\": \"plasterboard\", \"thickness_mm\": 12.5}]},"
+                                "{\"id\": \"panel\", \"loss_db\": 6}], \"antennas\": [],"
+                                "\"storeys\": [{\"id\": \"S1\", \"elevation_m\": 0, \"height_m\": 4, \"walls\": [");
+  g_autoptr (GPtrArray) faults = ut_faults_new ();
+  const UtPlan *plan;
+
+  for (int i = 0; i < N_WALLS; i++)
+    {
+      int x = g_rand_int_range (rand, 0, 115), y = g_rand_int_range (rand, 0, 76), w = g_rand_int_range (rand, 3, 6);
+
+      add_item (text, "", i == 0);
+      g_string_append_printf (text,
+                              "{\"id\": \"W%d\", \"construction\": \"%s\", \"points\": [[%d, %d], [%d, %d], [%d, %d], [%d, %d], [%d, %d]]}",
+                              i, i % 2 ? "stud" : "panel", x, y, x + w, y, x + w, y + 4, x, y + 4, x, y);
+    }
+  g_string_append (text, "]}], \"cells\": [");
+  for (int i = 0; i < N_CELLS + N_TERMINALS; i++)
+    {
+      gboolean cell = i < N_CELLS;
+
+      if (i == N_CELLS)
+        g_string_append (text, "], \"terminals\": [");
+      add_item (text, "", i == 0 || i == N_CELLS);
+      g_string_append_printf (text,
+                              "{\"id\": \"R%d\", \"storey\": \"S1\", \"x_m\": %d.%d, \"y_m\": %d.%d, \"height_m\": %s, \"power_dbm\": 20, "
+                              "\"power_min_dbm\": -20, \"power_max_dbm\": 24, \"power_step_db\": 0%s}",
+                              i,
+                              cell ? 12 + 24 * (i % 5) : g_rand_int_range (rand, 0, 120),
+                              g_rand_int_range (rand, 0, 10),
+                              cell ? 10 + 20 * (i / 5) : g_rand_int_range (rand, 0, 80),
+                              g_rand_int_range (rand, 0, 10),
+                              cell ? "3.5" : "1.2",
+                              cell ? "" : ", \"target_down_db\": -4, \"target_up_db\": -4");
+    }
+  g_string_append (text, "], \"measured_gains_db\": {}}");
+  plan = ut_plan_read (text->str, text->len, faults);
+  if (plan == NULL)
+    g_error ("the bench plan is refused: %s", ((UtFault *) faults->pdata[0])->message);
+  g_string_free (text, TRUE);
+  return plan;
+}
+
+static int
+compare_times (const void *one, const void *other)
+{
+  double a = *(const double *) one, b = *(const double *) other;
+
+  return (a > b) - (a < b);
+}
+
+static void
+print_times (const char *what, double *times_ms)
+{
+  qsort (times_ms, RUNS, sizeof *times_ms, compare_times);
+  printf ("  %-34s median %7.2f ms   95th %7.2f ms\n", what, times_ms[RUNS / 2], times_ms[RUNS * 95 / 100]);
+}
+
+static const UtPlan *
+move_cell (const UtPlan *plan, int run)
+{
+  UtCell *cell = ut_cell_copy (ut_plan_cell (plan, (guint) run % N_CELLS));
+
+  cell->radio.x_m += run % 2 ? 0.3 : -0.3;
+  return ut_plan_with_cell (plan, run % N_CELLS, cell);
+}
+
+static void
+bench (const UtPlan *start, const UtQuestion *question, const char *title)
+{
+  double whole_ms[RUNS], moved_ms[RUNS], gains_ms[RUNS];
+  const UtPlan *plan = ut_plan_ref (start);
+  UtStudy *study = ut_study_new (plan, question, NULL);
+
+  printf ("%s: verdict %d, headroom %.3f dB, radius %.3f\n", title, (int) study->verdict, study->headroom_db, study->spectral_radius);
+  for (int run = 0; run < RUNS; run++)
+    {
+      const UtPlan *next = move_cell (plan, run);
+      gint64 t0 = g_get_monotonic_time ();
+      UtStudy *renewed = ut_study_new (next, question, study);
+      gint64 t1 = g_get_monotonic_time ();
+      UtStudy *fresh = ut_study_new (next, question, NULL);
+      gint64 t2 = g_get_monotonic_time ();
+      UtGains *gains = ut_gains_new (next, study->gains);
+      gint64 t3 = g_get_monotonic_time ();
+
+      moved_ms[run] = (double) (t1 - t0) / 1e3;
+      whole_ms[run] = (double) (t2 - t1) / 1e3;
+      gains_ms[run] = (double) (t3 - t2) / 1e3;
+      if (!(fabs (renewed->headroom_db - fresh->headroom_db) <= 1e-9))
+        g_error ("the renewed answer differs from the fresh one");
+      ut_gains_unref (gains);
+      ut_study_unref (fresh);
+      ut_study_unref (study);
+      ut_plan_unref (plan);
+      study = renewed;
+      plan = next;
+    }
+  print_times ("whole answer, everything computed", whole_ms);
+  print_times ("after one cell moved", moved_ms);
+  print_times ("  of that, gains", gains_ms);
+  printf ("  ratio of the medians: %.1f\n", whole_ms[RUNS / 2] / moved_ms[RUNS / 2]);
+  ut_study_unref (study);
+  ut_plan_unref (plan);
+}
+
+int
+main (void)
+{
+  g_autoptr (GRand) rand = g_rand_new_with_seed (20);
+  g_autoptr (UtPlan) plan = (UtPlan *) make_plan (rand);
+  UtQuestion question = { .direction = UT_DIRECTION_DOWN, .aim = UT_AIM_LEAST_POWER };
+
+  printf ("20 cells, 200 terminals, 1,000 wall pieces; %d runs\n", RUNS);
+  bench (plan, &question, "orthogonal downlink");
+  question.direction = UT_DIRECTION_UP;
+  bench (plan, &question, "orthogonal uplink");
+
+  UtCarrier *carrier = ut_carrier_copy (plan->carrier);
+  carrier->sharing = UT_SHARING_SIMULTANEOUS;
+  carrier->processing_gain_db = 21;
+  carrier->downlink_orthogonality = 0.6;
+  g_autoptr (UtPlan) simultaneous = (UtPlan *) ut_plan_with_carrier (plan, carrier);
+  bench (simultaneous, &question, "simultaneous uplink");
+  question.direction = UT_DIRECTION_DOWN;
+  bench (simultaneous, &question, "simultaneous downlink");
+  return 0;
+}
