@@ -1,0 +1,16 @@
+#!/bin/sh
+# Builds Undertone and shows it: installs what is missing, builds into build/, prints the solved example and writes its page.
+set -eu
+cd "$(dirname "$0")/.."
+. data/setup.sh
+
+need $build_packages
+build build
+
+example=data/examples/cold-store.undertone
+page=build/example-page.pdf
+# 1 only says that not all targets are met: still an answer.
+build/undertone-cli solve "$example" || [ $? -eq 1 ]
+build/undertone-cli page "$example" --output "$page"
+echo
+echo "The printed page: $page"
