@@ -12,6 +12,7 @@ LAYERS = {
     "study": (("radio", "power", "plan"), ("glib", "gio", "json-glib")),
     "draw": (("plan", "study"), ("glib", "gio", "cairo", "pango", "gdk-pixbuf")),
     "cli": (("radio", "power", "plan", "study", "draw"), ("glib", "gio")),
+    "app": (("plan", "study", "draw"), ("glib", "gio", "gtk", "cairo")),
 }
 # What C17 and POSIX bring; GNU's or others' headers are not here on purpose.
 STANDARD = {"assert", "complex", "ctype", "errno", "fcntl", "float", "limits", "locale", "math", "stdarg", "stdbool", "stddef",
@@ -20,7 +21,7 @@ STANDARD = {"assert", "complex", "ctype", "errno", "fcntl", "float", "limits", "
 
 def owner(header):
     """The folder of src/ that has this header, or None."""
-    found = [folder for folder in LAYERS if (root / "src" / folder / header).is_file()]
+    found = [folder for folder in LAYERS if any((root / "src" / folder).rglob(header))]
     return found[0] if found else None
 
 

@@ -4,7 +4,8 @@ set -eu
 cd "$(dirname "$0")/.."
 . data/setup.sh
 
-need $build_packages python3 python3-numpy python3-scipy poppler-utils locales man-db
+need $build_packages python3 python3-numpy python3-scipy poppler-utils locales man-db \
+  xvfb xdotool dbus-daemon at-spi2-core gir1.2-atspi-2.0 python3-gi libglib2.0-bin
 build build
 build build-sanitize -Db_sanitize=address,undefined -Db_lundef=false -Dbuildtype=debug
 

@@ -1,5 +1,6 @@
 """A few lines for tests that run undertone-cli: running it, and reporting in TAP."""
 import json
+import os
 import subprocess
 import sys
 
@@ -7,19 +8,20 @@ import sys
 class Tap:
     def __init__(self):
         self.done = self.bad = 0
+        self.out = os.fdopen(int(os.environ["UT_REPORT_FD"]), "w") if "UT_REPORT_FD" in os.environ else sys.stdout
 
     def check(self, what, faults):
         """One test case: it passes when the list of faults is empty."""
         faults = list(faults)
         self.done += 1
         self.bad += bool(faults)
-        print(f"{'not ok' if faults else 'ok'} {self.done} - {what}", flush=True)
+        print(f"{'not ok' if faults else 'ok'} {self.done} - {what}", file=self.out, flush=True)
         for fault in faults:
             for line in str(fault).splitlines() or [""]:
-                print(f"# {line}")
+                print(f"# {line}", file=self.out)
 
     def end(self):
-        print(f"1..{self.done}")
+        print(f"1..{self.done}", file=self.out, flush=True)
         sys.exit(1 if self.bad or not self.done else 0)
 
 

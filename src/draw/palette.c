@@ -64,10 +64,10 @@ const char *
 ut_margin_words (UtMarginClass margin)
 {
   static const char *const words[] = {
-    [UT_MARGIN_FAR_SHORT] = "short by more than 3 dB",
+    [UT_MARGIN_FAR_SHORT] = "short by over 3 dB",
     [UT_MARGIN_SHORT] = "short",
-    [UT_MARGIN_TIGHT] = "met, less than 3 dB to spare",
-    [UT_MARGIN_EASY] = "met with 3 dB or more to spare",
+    [UT_MARGIN_TIGHT] = "met, under 3 dB to spare",
+    [UT_MARGIN_EASY] = "met, more to spare",
     [UT_MARGIN_UNKNOWN] = "no cell",
   };
 

@@ -314,6 +314,13 @@ take_radios (GArray *boxes, const UtPlan *plan, const GPtrArray *radios, const U
     }
 }
 
+void
+ut_paint_take_radios (GArray *boxes, const UtPlan *plan, const UtPaintOptions *options)
+{
+  take_radios (boxes, plan, plan->cells, options);
+  take_radios (boxes, plan, plan->terminals, options);
+}
+
 static void
 label_radio (cairo_t *cr, GArray *boxes, const UtRadio *radio, gboolean bold, const UtPaintOptions *options)
 {
@@ -402,10 +409,10 @@ ut_paint_plan (cairo_t *cr, const UtPlan *plan, const UtStudy *study, const UtPa
     paint_radios (cr, plan, options);
   if (options->labels)
     {
-      g_autoptr (GArray) boxes = ut_boxes_new ();
+      g_autoptr (GArray) boxes = options->boxes != NULL ? g_array_ref (options->boxes) : ut_boxes_new ();
 
-      take_radios (boxes, plan, plan->cells, options);
-      take_radios (boxes, plan, plan->terminals, options);
+      if (options->boxes == NULL)
+        ut_paint_take_radios (boxes, plan, options);
       label_radios (cr, boxes, plan, options);
       if (options->links && study != NULL)
         label_links (cr, boxes, plan, study, options);

@@ -15,6 +15,7 @@ typedef struct
   const UtPalette *palette;
   gboolean grid, walls;      /* what does not move: with walls the backdrop and the openings */
   gboolean links, radios, labels;
+  GArray *boxes; /* places that labels must leave alone (labels.h), and gets theirs; NULL: none but the radios' own */
 } UtPaintOptions;
 
 /* Size of the text that goes with a mark. */
@@ -22,6 +23,9 @@ typedef struct
 
 /* Extent of a storey in metres: walls, radios on it, backdrop; FALSE when there is nothing. */
 gboolean ut_plan_extent (const UtPlan *plan, guint storey, double *x0_m, double *y0_m, double *x1_m, double *y1_m);
+
+/* Takes the places of the storey's radios, so that no label lies on one. */
+void ut_paint_take_radios (GArray *boxes, const UtPlan *plan, const UtPaintOptions *options);
 
 /* Paints what the options ask for. study may be NULL: then no links are drawn. It must be an answer to this very plan's radios. */
 void ut_paint_plan (cairo_t *cr, const UtPlan *plan, const UtStudy *study, const UtPaintOptions *options);

@@ -56,6 +56,39 @@ saved_db (const UtStudy *study)
   return chosen_mw > 0 && set_mw > 0 ? ut_db_from_ratio (set_mw / chosen_mw) : NAN;
 }
 
+/* As set: who falls short, and that other powers would heal it. */
+static char *
+as_set_sentence (const UtStudy *study, const char *all, const char *headroom)
+{
+  g_autoptr (GArray) failing = g_array_new (FALSE, FALSE, sizeof (guint));
+  double worst_db = 0;
+
+  for (guint i = 0; i < study->links->len; i++)
+    {
+      const UtLinkAnswer *link = ut_study_link (study, i);
+
+      if (link->margin_db >= UT_MARGIN_MET_DB)
+        continue;
+      g_array_append_val (failing, link->terminal);
+      worst_db = fmin (worst_db, link->margin_db);
+    }
+  if (failing->len == 0)
+    return g_strdup_printf ("%s %s met as set; with powers that suit there would be %s dB to spare.",
+                            all,
+                            study->links->len == 1 ? "is" : "are",
+                            headroom);
+  g_autofree char *names = name_terminals (study, failing);
+  g_autofree char *short_by = ut_report_figure (-worst_db, 1);
+  g_autofree char *all_small = g_strdup_printf ("%c%s", g_ascii_tolower (all[0]), all + 1);
+  return g_strdup_printf ("As set %s fall%s short, %s%s dB; with powers that suit %s can be met, with %s dB to spare.",
+                          names,
+                          failing->len == 1 ? "s" : "",
+                          failing->len == 1 ? "by " : "the worst by ",
+                          short_by,
+                          all_small,
+                          headroom);
+}
+
 static char *
 met_sentence (const UtStudy *study)
 {
@@ -68,7 +101,7 @@ met_sentence (const UtStudy *study)
   const char *rise = study->links->len == 1 ? "it" : "every one";
 
   if (study->question.aim == UT_AIM_AS_SET)
-    return g_strdup_printf ("%s can be met at once, with powers that suit; %s could rise by %s dB.", all, rise, headroom);
+    return as_set_sentence (study, all, headroom);
   return g_strdup_printf ("%s %s met. The powers add up to %s dB %s than set; %s could rise by %s dB.",
                           all,
                           study->links->len == 1 ? "is" : "are",

@@ -1,0 +1,350 @@
+#include "desk.h"
+
+#include <math.h>
+
+#include <glib/gi18n.h>
+
+#include "plan-edit.h"
+
+struct _UtDesk
+{
+  GObject parent;
+  UtDocument *document;
+  UtSelection *selection;
+  UtSolving *solving;
+  const UtPlan *draft;
+  UtQuestion question;
+};
+
+G_DEFINE_FINAL_TYPE (UtDesk, ut_desk, G_TYPE_OBJECT)
+
+enum { PLAN_CHANGED, QUESTION_CHANGED, N_SIGNALS };
+static guint signals[N_SIGNALS];
+
+static void
+ut_desk_dispose (GObject *object)
+{
+  UtDesk *self = UT_DESK (object);
+
+  g_clear_pointer (&self->draft, ut_plan_unref);
+  g_clear_object (&self->document);
+  g_clear_object (&self->selection);
+  g_clear_object (&self->solving);
+  G_OBJECT_CLASS (ut_desk_parent_class)->dispose (object);
+}
+
+static void
+ut_desk_class_init (UtDeskClass *class)
+{
+  G_OBJECT_CLASS (class)->dispose = ut_desk_dispose;
+  signals[PLAN_CHANGED] = g_signal_new ("plan-changed", UT_TYPE_DESK, G_SIGNAL_RUN_LAST, 0, NULL, NULL, NULL, G_TYPE_NONE, 0);
+  signals[QUESTION_CHANGED] = g_signal_new ("question-changed", UT_TYPE_DESK, G_SIGNAL_RUN_LAST, 0, NULL, NULL, NULL, G_TYPE_NONE, 0);
+}
+
+static void
+ut_desk_init (UtDesk *self)
+{
+  self->selection = ut_selection_new ();
+  self->solving = ut_solving_new ();
+  self->question = (UtQuestion){ .direction = UT_DIRECTION_DOWN, .aim = UT_AIM_LEAST_POWER };
+}
+
+static void
+ask (UtDesk *self)
+{
+  ut_solving_ask (self->solving, ut_desk_plan (self), &self->question);
+}
+
+/* The plan shown became another: the answer is asked for first, so that whoever is told finds it there when it is quick. */
+static void
+show_plan (UtDesk *self)
+{
+  ask (self);
+  g_signal_emit (self, signals[PLAN_CHANGED], 0);
+  ut_selection_keep_to (self->selection, ut_desk_plan (self));
+}
+
+UtDesk *
+ut_desk_new (UtDocument *document)
+{
+  UtDesk *self = g_object_new (UT_TYPE_DESK, NULL);
+
+  self->document = g_object_ref (document);
+  g_signal_connect_object (document, "changed", G_CALLBACK (show_plan), self, G_CONNECT_SWAPPED);
+  ask (self);
+  return self;
+}
+
+UtDocument *
+ut_desk_document (UtDesk *self)
+{
+  return self->document;
+}
+
+UtSelection *
+ut_desk_selection (UtDesk *self)
+{
+  return self->selection;
+}
+
+UtSolving *
+ut_desk_solving (UtDesk *self)
+{
+  return self->solving;
+}
+
+const UtPlan *
+ut_desk_plan (UtDesk *self)
+{
+  return self->draft != NULL ? self->draft : ut_document_plan (self->document);
+}
+
+gboolean
+ut_desk_has_draft (UtDesk *self)
+{
+  return self->draft != NULL;
+}
+
+void
+ut_desk_set_draft (UtDesk *self, const UtPlan *draft)
+{
+  g_clear_pointer (&self->draft, ut_plan_unref);
+  self->draft = draft;
+  show_plan (self);
+}
+
+void
+ut_desk_commit_draft (UtDesk *self, const char *label, const char *coalesce)
+{
+  if (self->draft != NULL)
+    ut_desk_apply (self, g_steal_pointer (&self->draft), label, coalesce);
+}
+
+void
+ut_desk_drop_draft (UtDesk *self)
+{
+  if (self->draft == NULL)
+    return;
+  g_clear_pointer (&self->draft, ut_plan_unref);
+  show_plan (self);
+}
+
+void
+ut_desk_apply (UtDesk *self, const UtPlan *plan, const char *label, const char *coalesce)
+{
+  g_autofree char *selected = ut_selection_to_text (self->selection);
+
+  g_clear_pointer (&self->draft, ut_plan_unref);
+  ut_document_apply (self->document, plan, label, coalesce, selected);
+}
+
+void
+ut_desk_undo (UtDesk *self)
+{
+  ut_desk_drop_draft (self);
+  if (ut_document_undo (self->document))
+    ut_selection_keep_to (self->selection, ut_desk_plan (self));
+}
+
+void
+ut_desk_redo (UtDesk *self)
+{
+  ut_desk_drop_draft (self);
+  if (ut_document_redo (self->document))
+    ut_selection_set_text (self->selection, ut_document_selection (self->document));
+}
+
+const UtQuestion *
+ut_desk_question (UtDesk *self)
+{
+  return &self->question;
+}
+
+void
+ut_desk_set_question (UtDesk *self, const UtQuestion *question)
+{
+  if (self->question.direction == question->direction && self->question.aim == question->aim
+      && !(self->question.hold_db < question->hold_db) && !(self->question.hold_db > question->hold_db))
+    return;
+  self->question = *question;
+  ask (self);
+  g_signal_emit (self, signals[QUESTION_CHANGED], 0);
+}
+
+UtStudy *
+ut_desk_answer (UtDesk *self)
+{
+  return ut_solving_is_stale (self->solving) ? NULL : ut_solving_study (self->solving);
+}
+
+/* The plan with one radio changed by `change`; transfer full. */
+static const UtPlan *
+with_radio (const UtPlan *plan, UtRadioKind kind, const char *id, void (*change) (UtRadio *radio, const double *by), const double *by)
+{
+  int index = kind == UT_KIND_CELL ? ut_plan_find_cell (plan, id) : ut_plan_find_terminal (plan, id);
+
+  if (index < 0)
+    return ut_plan_ref (plan);
+  if (kind == UT_KIND_CELL)
+    {
+      UtCell *cell = ut_cell_copy (ut_plan_cell (plan, (guint) index));
+      change (&cell->radio, by);
+      return ut_plan_with_cell (plan, index, cell);
+    }
+  UtTerminal *terminal = ut_terminal_copy (ut_plan_terminal (plan, (guint) index));
+  change (&terminal->radio, by);
+  return ut_plan_with_terminal (plan, index, terminal);
+}
+
+/* Places are kept to the millimetre: what a drag gives below that is noise. */
+static double
+to_mm (double value_m)
+{
+  return round (value_m * 1e3) / 1e3;
+}
+
+static void
+move_radio (UtRadio *radio, const double *by_m)
+{
+  radio->x_m = to_mm (radio->x_m + by_m[0]);
+  radio->y_m = to_mm (radio->y_m + by_m[1]);
+}
+
+static void
+set_power (UtRadio *radio, const double *power_dbm)
+{
+  radio->power_dbm = CLAMP (round (*power_dbm * 10) / 10, radio->power_min_dbm, radio->power_max_dbm);
+}
+
+const UtPlan *
+ut_desk_moved (UtDesk *self, const UtPlan *plan, double dx_m, double dy_m)
+{
+  const double by_m[2] = { dx_m, dy_m };
+  const UtPlan *moved = ut_plan_ref (plan);
+
+  for (guint i = 0; i < ut_selection_size (self->selection); i++)
+    {
+      const UtPick *pick = ut_selection_pick (self->selection, i);
+      const UtPlan *next = with_radio (moved, pick->kind, pick->id, move_radio, by_m);
+
+      ut_plan_unref (moved);
+      moved = next;
+    }
+  return moved;
+}
+
+const UtPlan *
+ut_plan_with_set_power (const UtPlan *plan, UtRadioKind kind, const char *id, double power_dbm)
+{
+  return with_radio (plan, kind, id, set_power, &power_dbm);
+}
+
+char *
+ut_desk_step_label (UtDesk *self, const char *verb)
+{
+  guint n = ut_selection_size (self->selection);
+  g_autofree char *many = g_strdup_printf (g_dngettext (NULL, "%u Radio", "%u Radios", n), n);
+
+  G_GNUC_BEGIN_IGNORE_DEPRECATIONS
+  return g_strconcat (verb, " ", n == 1 ? ut_selection_pick (self->selection, 0)->id : many, NULL);
+  G_GNUC_END_IGNORE_DEPRECATIONS
+}
+
+void
+ut_desk_delete_selected (UtDesk *self)
+{
+  g_autofree char *label = NULL;
+  const UtPlan *plan;
+
+  if (ut_selection_size (self->selection) == 0)
+    return;
+  label = ut_desk_step_label (self, _ ("Delete"));
+  plan = ut_plan_ref (ut_document_plan (self->document));
+  for (guint i = 0; i < ut_selection_size (self->selection); i++)
+    {
+      const UtPick *pick = ut_selection_pick (self->selection, i);
+      int index = pick->kind == UT_KIND_CELL ? ut_plan_find_cell (plan, pick->id) : ut_plan_find_terminal (plan, pick->id);
+      const UtPlan *next = pick->kind == UT_KIND_CELL ? ut_plan_without_cell (plan, index) : ut_plan_without_terminal (plan, index);
+
+      ut_plan_unref (plan);
+      plan = next;
+    }
+  ut_desk_apply (self, plan, label, NULL);
+}
+
+void
+ut_desk_nudge_selected (UtDesk *self, double dx_m, double dy_m)
+{
+  g_autofree char *label = NULL, *selected = NULL, *coalesce = NULL;
+
+  if (ut_selection_size (self->selection) == 0)
+    return;
+  label = ut_desk_step_label (self, _ ("Nudge"));
+  selected = ut_selection_to_text (self->selection);
+  coalesce = g_strconcat ("nudge\n", selected, NULL);
+  ut_desk_apply (self, ut_desk_moved (self, ut_document_plan (self->document), dx_m, dy_m), label, coalesce);
+}
+
+/* What a new radio is like: the last of its kind in the plan, or the usual small cell and hand-held terminal. */
+static const UtPlan *
+with_new_cell (const UtPlan *plan, const char *id, const char *storey, double x_m, double y_m)
+{
+  UtCell *cell = plan->cells->len > 0 ? ut_cell_copy (ut_plan_cell (plan, plan->cells->len - 1)) : ut_cell_new ();
+  UtRadio *radio = &cell->radio;
+
+  if (plan->cells->len == 0)
+    {
+      radio->height_m = 3;
+      radio->power_dbm = radio->power_max_dbm = 24;
+      radio->power_min_dbm = 0;
+    }
+  g_free (radio->id);
+  g_free (radio->name);
+  g_free (radio->storey);
+  radio->id = g_strdup (id);
+  radio->name = g_strdup (id);
+  radio->storey = g_strdup (storey);
+  radio->x_m = to_mm (x_m);
+  radio->y_m = to_mm (y_m);
+  radio->on = TRUE;
+  return ut_plan_with_cell (plan, -1, cell);
+}
+
+static const UtPlan *
+with_new_terminal (const UtPlan *plan, const char *id, const char *storey, double x_m, double y_m)
+{
+  UtTerminal *terminal = plan->terminals->len > 0 ? ut_terminal_copy (ut_plan_terminal (plan, plan->terminals->len - 1)) : ut_terminal_new ();
+  UtRadio *radio = &terminal->radio;
+
+  if (plan->terminals->len == 0)
+    {
+      radio->height_m = 1.2;
+      radio->power_dbm = radio->power_max_dbm = 23;
+      radio->power_min_dbm = -40;
+      terminal->target_down_db = 6;
+      terminal->target_up_db = 3;
+    }
+  g_clear_pointer (&terminal->cell, g_free);
+  g_free (radio->id);
+  g_free (radio->name);
+  g_free (radio->storey);
+  radio->id = g_strdup (id);
+  radio->name = g_strdup (id);
+  radio->storey = g_strdup (storey);
+  radio->x_m = to_mm (x_m);
+  radio->y_m = to_mm (y_m);
+  radio->on = TRUE;
+  return ut_plan_with_terminal (plan, -1, terminal);
+}
+
+void
+ut_desk_place (UtDesk *self, UtRadioKind kind, const char *storey, double x_m, double y_m)
+{
+  const UtPlan *plan = ut_document_plan (self->document);
+  g_autofree char *id = kind == UT_KIND_CELL ? ut_plan_free_cell_id (plan) : ut_plan_free_terminal_id (plan);
+  g_autofree char *label = g_strconcat (_ ("Place"), " ", id, NULL);
+  const UtPlan *next = kind == UT_KIND_CELL ? with_new_cell (plan, id, storey, x_m, y_m) : with_new_terminal (plan, id, storey, x_m, y_m);
+
+  ut_desk_apply (self, next, label, NULL);
+  ut_selection_set_one (self->selection, kind, id);
+}

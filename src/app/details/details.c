@@ -1,0 +1,325 @@
+#include "details.h"
+
+#include <glib/gi18n.h>
+
+#include "fields.h"
+
+struct _UtDetails
+{
+  GtkWidget parent;
+  UtDesk *desk;
+  GtkWidget *box;
+  GPtrArray *editors; /* GtkWidget of each field of the subject */
+  GtkLabel *heading, *refusal;
+  UtSubject subject;
+  char *id;         /* of the radio shown */
+  gboolean built;
+  gboolean showing; /* editors are being brought to the plan's state */
+};
+
+G_DEFINE_FINAL_TYPE (UtDetails, ut_details, GTK_TYPE_WIDGET)
+
+static guint
+index_of (GtkWidget *editor)
+{
+  return GPOINTER_TO_UINT (g_object_get_data (G_OBJECT (editor), "field"));
+}
+
+/* What the editor holds, in the words of fields.h. */
+static char *
+editor_text (GtkWidget *editor)
+{
+  if (GTK_IS_SWITCH (editor))
+    return g_strdup (gtk_switch_get_active (GTK_SWITCH (editor)) ? "1" : "0");
+  if (GTK_IS_DROP_DOWN (editor))
+    return g_strdup_printf ("%u", gtk_drop_down_get_selected (GTK_DROP_DOWN (editor)));
+  return g_strdup (gtk_editable_get_text (GTK_EDITABLE (editor)));
+}
+
+static void
+show_in_editor (UtDetails *self, GtkWidget *editor)
+{
+  g_autofree char *text = ut_fields_text (ut_desk_plan (self->desk), self->subject, self->id, index_of (editor));
+
+  gtk_widget_remove_css_class (editor, "refused");
+  if (GTK_IS_SWITCH (editor))
+    gtk_switch_set_active (GTK_SWITCH (editor), text[0] == '1');
+  else if (GTK_IS_DROP_DOWN (editor))
+    gtk_drop_down_set_selected (GTK_DROP_DOWN (editor), (guint) g_ascii_strtoull (text, NULL, 10));
+  else if (g_strcmp0 (gtk_editable_get_text (GTK_EDITABLE (editor)), text) != 0)
+    gtk_editable_set_text (GTK_EDITABLE (editor), text);
+}
+
+/* The editor's value becomes a step, or is refused and stays to be mended. */
+static void
+commit (UtDetails *self, GtkWidget *editor)
+{
+  g_autofree char *text = NULL, *before = NULL, *refusal = NULL, *label = NULL;
+  const UtPlan *plan;
+
+  if (self->showing || self->desk == NULL)
+    return;
+  text = editor_text (editor);
+  before = ut_fields_text (ut_desk_plan (self->desk), self->subject, self->id, index_of (editor));
+  if (g_str_equal (text, before))
+    {
+      gtk_widget_remove_css_class (editor, "refused");
+      gtk_label_set_text (self->refusal, "");
+      return;
+    }
+  plan = ut_fields_with (ut_desk_plan (self->desk), self->subject, self->id, index_of (editor), text, &refusal);
+  gtk_label_set_text (self->refusal, refusal != NULL ? refusal : "");
+  gtk_widget_set_visible (GTK_WIDGET (self->refusal), refusal != NULL);
+  if (plan == NULL)
+    {
+      gtk_widget_add_css_class (editor, "refused");
+      return;
+    }
+  label = g_strconcat (_ ("Change"), " ", self->id != NULL ? self->id : "", self->id != NULL ? " " : "",
+                       _ (ut_fields_field (self->subject, index_of (editor))->label), NULL);
+  ut_desk_apply (self->desk, plan, label, NULL);
+}
+
+static void
+editor_done_cb (GtkWidget *editor, UtDetails *self)
+{
+  commit (self, editor);
+}
+
+static void
+editor_notify_cb (GtkWidget *editor, GParamSpec *spec, UtDetails *self)
+{
+  (void) spec;
+  commit (self, editor);
+}
+
+static void
+focus_left_cb (GtkEventControllerFocus *controller, UtDetails *self)
+{
+  commit (self, gtk_event_controller_get_widget (GTK_EVENT_CONTROLLER (controller)));
+}
+
+/* The wheel over a drop-down scrolls the pane. */
+static gboolean
+ignore_wheel_cb (GtkEventControllerScroll *controller, double dx, double dy, UtDetails *self)
+{
+  GtkWidget *scroller = gtk_widget_get_ancestor (GTK_WIDGET (self), GTK_TYPE_SCROLLED_WINDOW);
+  GtkAdjustment *adjustment = scroller != NULL ? gtk_scrolled_window_get_vadjustment (GTK_SCROLLED_WINDOW (scroller)) : NULL;
+
+  (void) controller;
+  (void) dx;
+  if (adjustment != NULL)
+    gtk_adjustment_set_value (adjustment, gtk_adjustment_get_value (adjustment) + 40 * dy);
+  return GDK_EVENT_STOP;
+}
+
+static GtkWidget *
+make_editor (UtDetails *self, guint index)
+{
+  const UtField *field = ut_fields_field (self->subject, index);
+  GtkWidget *editor;
+
+  if (field->kind == UT_FIELD_SWITCH)
+    {
+      editor = gtk_switch_new ();
+      gtk_widget_set_halign (editor, GTK_ALIGN_START);
+      g_signal_connect (editor, "notify::active", G_CALLBACK (editor_notify_cb), self);
+    }
+  else if (field->kind == UT_FIELD_CHOICE)
+    {
+      g_auto (GStrv) choices = ut_fields_choices (ut_desk_plan (self->desk), self->subject, index);
+      GtkEventController *wheel = gtk_event_controller_scroll_new (GTK_EVENT_CONTROLLER_SCROLL_VERTICAL);
+
+      editor = gtk_drop_down_new_from_strings ((const char *const *) choices);
+      gtk_event_controller_set_propagation_phase (wheel, GTK_PHASE_CAPTURE);
+      g_signal_connect (wheel, "scroll", G_CALLBACK (ignore_wheel_cb), self);
+      gtk_widget_add_controller (editor, wheel);
+      g_signal_connect (editor, "notify::selected", G_CALLBACK (editor_notify_cb), self);
+    }
+  else
+    {
+      GtkEventController *focus = gtk_event_controller_focus_new ();
+
+      editor = gtk_entry_new ();
+      gtk_editable_set_width_chars (GTK_EDITABLE (editor), 8);
+      g_signal_connect (editor, "activate", G_CALLBACK (editor_done_cb), self);
+      g_signal_connect (focus, "leave", G_CALLBACK (focus_left_cb), self);
+      gtk_widget_add_controller (editor, focus);
+    }
+  g_object_set_data (G_OBJECT (editor), "field", GUINT_TO_POINTER (index));
+  gtk_widget_set_hexpand (editor, field->kind != UT_FIELD_SWITCH);
+  return editor;
+}
+
+static void
+add_field (UtDetails *self, GtkGrid *grid, guint index)
+{
+  const UtField *field = ut_fields_field (self->subject, index);
+  g_autofree char *text = field->unit != NULL ? g_strdup_printf ("%s (%s)", _ (field->label), field->unit) : g_strdup (_ (field->label));
+  GtkWidget *label = gtk_label_new (text), *editor = make_editor (self, index);
+
+  gtk_label_set_xalign (GTK_LABEL (label), 0);
+  /* As wide for every subject: the sheet keeps its size when the selection changes. */
+  gtk_label_set_width_chars (GTK_LABEL (label), 20);
+  gtk_label_set_max_width_chars (GTK_LABEL (label), 20);
+  gtk_label_set_ellipsize (GTK_LABEL (label), PANGO_ELLIPSIZE_END);
+  gtk_widget_set_tooltip_text (label, text);
+  gtk_label_set_mnemonic_widget (GTK_LABEL (label), editor);
+  gtk_accessible_update_property (GTK_ACCESSIBLE (editor), GTK_ACCESSIBLE_PROPERTY_LABEL, text, -1);
+  gtk_grid_attach (grid, label, 0, (int) index, 1, 1);
+  gtk_grid_attach (grid, editor, 1, (int) index, 1, 1);
+  g_ptr_array_add (self->editors, editor);
+}
+
+static void
+show_heading (UtDetails *self)
+{
+  guint n = ut_selection_size (ut_desk_selection (self->desk));
+  g_autofree char *text = NULL;
+
+  switch (self->subject)
+    {
+    case UT_SUBJECT_PLAN:
+      text = g_strdup (_ ("Plan"));
+      break;
+    case UT_SUBJECT_CELL:
+      text = g_strdup_printf (_ ("Cell %s"), self->id);
+      break;
+    case UT_SUBJECT_TERMINAL:
+      text = g_strdup_printf (_ ("Terminal %s"), self->id);
+      break;
+    case UT_SUBJECT_MANY:
+      text = g_strdup_printf (ngettext ("%u radio selected", "%u radios selected", n), n);
+      break;
+    }
+  gtk_label_set_text (self->heading, text);
+}
+
+static void
+build (UtDetails *self)
+{
+  GtkWidget *old = gtk_widget_get_last_child (self->box), *grid = gtk_grid_new ();
+  UtSelection *selection = ut_desk_selection (self->desk);
+
+  self->subject = ut_fields_subject (self->desk);
+  g_free (self->id);
+  self->id = self->subject == UT_SUBJECT_CELL || self->subject == UT_SUBJECT_TERMINAL ? g_strdup (ut_selection_pick (selection, 0)->id) : NULL;
+  self->showing = TRUE; /* editors that go lose their focus: that is no edit */
+  g_ptr_array_set_size (self->editors, 0);
+  if (GTK_IS_GRID (old))
+    gtk_box_remove (GTK_BOX (self->box), old);
+  gtk_grid_set_row_spacing (GTK_GRID (grid), 4);
+  gtk_grid_set_column_spacing (GTK_GRID (grid), 8);
+  for (guint i = 0; i < ut_fields_count (self->subject); i++)
+    add_field (self, GTK_GRID (grid), i);
+  gtk_box_append (GTK_BOX (self->box), grid);
+  gtk_label_set_text (self->refusal, "");
+  gtk_widget_set_visible (GTK_WIDGET (self->refusal), FALSE);
+  show_heading (self);
+  self->showing = FALSE;
+}
+
+/* Choices that come from the plan are made anew only where the plan's lists are others: then all is. */
+static gboolean
+choices_hold (UtDetails *self)
+{
+  for (guint i = 0; i < self->editors->len; i++)
+    {
+      GtkWidget *editor = self->editors->pdata[i];
+      g_auto (GStrv) choices = ut_fields_choices (ut_desk_plan (self->desk), self->subject, index_of (editor));
+      GListModel *model = GTK_IS_DROP_DOWN (editor) ? gtk_drop_down_get_model (GTK_DROP_DOWN (editor)) : NULL;
+
+      if (model == NULL)
+        continue;
+      if (g_list_model_get_n_items (model) != g_strv_length (choices))
+        return FALSE;
+      for (guint k = 0; choices[k] != NULL; k++)
+        if (!g_str_equal (choices[k], gtk_string_list_get_string (GTK_STRING_LIST (model), k)))
+          return FALSE;
+    }
+  return TRUE;
+}
+
+static void
+refresh (UtDetails *self)
+{
+  UtSelection *selection = ut_desk_selection (self->desk);
+  UtSubject subject = ut_fields_subject (self->desk);
+  const char *id = subject == UT_SUBJECT_CELL || subject == UT_SUBJECT_TERMINAL ? ut_selection_pick (selection, 0)->id : NULL;
+
+  if (id != NULL && ut_plan_radio (ut_desk_plan (self->desk), ut_selection_pick (selection, 0)->kind, id) == NULL)
+    return; /* about to be dropped from the selection */
+  if (!self->built || subject != self->subject || g_strcmp0 (id, self->id) != 0 || !choices_hold (self))
+    build (self);
+  self->built = TRUE;
+  self->showing = TRUE;
+  for (guint i = 0; i < self->editors->len; i++)
+    show_in_editor (self, self->editors->pdata[i]);
+  show_heading (self);
+  self->showing = FALSE;
+}
+
+void
+ut_details_set_desk (UtDetails *self, UtDesk *desk)
+{
+  if (self->desk != NULL)
+    {
+      g_signal_handlers_disconnect_by_func (self->desk, refresh, self);
+      g_signal_handlers_disconnect_by_func (ut_desk_selection (self->desk), refresh, self);
+    }
+  g_set_object (&self->desk, desk);
+  self->built = FALSE;
+  if (desk == NULL)
+    return;
+  g_signal_connect_object (desk, "plan-changed", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
+  g_signal_connect_object (ut_desk_selection (desk), "changed", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
+  refresh (self);
+}
+
+static void
+ut_details_dispose (GObject *object)
+{
+  UtDetails *self = UT_DETAILS (object);
+
+  self->showing = TRUE;
+  ut_details_set_desk (self, NULL);
+  g_clear_pointer (&self->box, gtk_widget_unparent);
+  G_OBJECT_CLASS (ut_details_parent_class)->dispose (object);
+}
+
+static void
+ut_details_finalize (GObject *object)
+{
+  g_ptr_array_unref (UT_DETAILS (object)->editors);
+  g_free (UT_DETAILS (object)->id);
+  G_OBJECT_CLASS (ut_details_parent_class)->finalize (object);
+}
+
+static void
+ut_details_class_init (UtDetailsClass *class)
+{
+  G_OBJECT_CLASS (class)->dispose = ut_details_dispose;
+  G_OBJECT_CLASS (class)->finalize = ut_details_finalize;
+  gtk_widget_class_set_layout_manager_type (GTK_WIDGET_CLASS (class), GTK_TYPE_BIN_LAYOUT);
+  gtk_widget_class_set_accessible_role (GTK_WIDGET_CLASS (class), GTK_ACCESSIBLE_ROLE_GROUP);
+}
+
+static void
+ut_details_init (UtDetails *self)
+{
+  self->editors = g_ptr_array_new ();
+  self->box = gtk_box_new (GTK_ORIENTATION_VERTICAL, 8);
+  gtk_widget_add_css_class (self->box, "details");
+  self->heading = GTK_LABEL (gtk_label_new (NULL));
+  gtk_label_set_xalign (self->heading, 0);
+  gtk_widget_add_css_class (GTK_WIDGET (self->heading), "heading");
+  self->refusal = GTK_LABEL (gtk_label_new (NULL));
+  gtk_label_set_wrap (self->refusal, TRUE);
+  gtk_label_set_xalign (self->refusal, 0);
+  gtk_widget_add_css_class (GTK_WIDGET (self->refusal), "refusal");
+  gtk_widget_set_visible (GTK_WIDGET (self->refusal), FALSE);
+  gtk_box_append (GTK_BOX (self->box), GTK_WIDGET (self->heading));
+  gtk_box_append (GTK_BOX (self->box), GTK_WIDGET (self->refusal));
+  gtk_widget_set_parent (self->box, GTK_WIDGET (self));
+  gtk_accessible_update_property (GTK_ACCESSIBLE (self), GTK_ACCESSIBLE_PROPERTY_LABEL, _ ("Details"), -1);
+}

@@ -1,0 +1,43 @@
+/* The fields of the details pane, as a table: what is shown of which thing, and how a text becomes a value and back. No widgets. */
+#pragma once
+
+#include "desk.h"
+
+typedef enum
+{
+  UT_SUBJECT_PLAN, /* title, carrier and propagation: when nothing is selected */
+  UT_SUBJECT_CELL,
+  UT_SUBJECT_TERMINAL,
+  UT_SUBJECT_MANY,
+} UtSubject;
+
+typedef enum
+{
+  UT_FIELD_TEXT,
+  UT_FIELD_NUMBER,
+  UT_FIELD_NUMBER_OR_NONE, /* empty: none */
+  UT_FIELD_WHOLE,
+  UT_FIELD_SWITCH,
+  UT_FIELD_CHOICE,
+} UtFieldKind;
+
+typedef struct
+{
+  const char *label; /* not translated yet */
+  const char *unit;
+  UtFieldKind kind;
+  const char *const *words; /* choices, NULL-terminated, not translated yet; NULL: made from the plan (antennas, cells) */
+} UtField;
+
+UtSubject ut_fields_subject (UtDesk *desk);
+guint ut_fields_count (UtSubject subject);
+const UtField *ut_fields_field (UtSubject subject, guint index);
+
+/* The choices of a field in this plan (translated); transfer full, NULL for fields that are no choice. */
+char **ut_fields_choices (const UtPlan *plan, UtSubject subject, guint index);
+
+/* The present value as text; for switches "1" or "0", for choices the position.  id: of the radio. Transfer full. */
+char *ut_fields_text (const UtPlan *plan, UtSubject subject, const char *id, guint index);
+
+/* The plan with the field set from a text.  NULL with *refusal (transfer full) where the text is no value, or none that the plan may have. */
+const UtPlan *ut_fields_with (const UtPlan *plan, UtSubject subject, const char *id, guint index, const char *text, char **refusal) G_GNUC_WARN_UNUSED_RESULT;

@@ -1,0 +1,41 @@
+/* What is selected: radios by kind and id, so that a selection outlives the revision it was made in. */
+#pragma once
+
+#include "plan.h"
+
+typedef enum { UT_KIND_CELL, UT_KIND_TERMINAL } UtRadioKind;
+
+typedef struct
+{
+  UtRadioKind kind;
+  char *id;
+} UtPick;
+
+#define UT_TYPE_SELECTION (ut_selection_get_type ())
+G_DECLARE_FINAL_TYPE (UtSelection, ut_selection, UT, SELECTION, GObject)
+
+/* Signal "changed" after the set became another one. */
+UtSelection *ut_selection_new (void);
+
+guint ut_selection_size (UtSelection *selection);
+const UtPick *ut_selection_pick (UtSelection *selection, guint index); /* in the order they were added */
+gboolean ut_selection_has (UtSelection *selection, UtRadioKind kind, const char *id);
+
+void ut_selection_clear (UtSelection *selection);
+void ut_selection_set_one (UtSelection *selection, UtRadioKind kind, const char *id);
+void ut_selection_add (UtSelection *selection, UtRadioKind kind, const char *id);
+void ut_selection_toggle (UtSelection *selection, UtRadioKind kind, const char *id);
+
+/* Drops what the plan no longer holds. */
+void ut_selection_keep_to (UtSelection *selection, const UtPlan *plan);
+
+/* As text for the document's steps ("cell C1\nterminal T4"), and back. */
+char *ut_selection_to_text (UtSelection *selection);
+void ut_selection_set_text (UtSelection *selection, const char *text);
+
+/* Begin a change of several parts that is told once, and end it. */
+void ut_selection_freeze (UtSelection *selection);
+void ut_selection_thaw (UtSelection *selection);
+
+/* The radio picked, or NULL when the plan does not hold it. */
+const UtRadio *ut_plan_radio (const UtPlan *plan, UtRadioKind kind, const char *id);

@@ -1,0 +1,40 @@
+/* What the sheet shows, layer by layer.  Walls and grid change seldom and are kept as one picture at the view's scale; links, radios and marks are
+ * drawn anew. */
+#pragma once
+
+#include <gtk/gtk.h>
+
+#include "desk.h"
+#include "palette.h"
+#include "tool.h"
+#include "view.h"
+
+typedef struct
+{
+  UtDesk *desk;
+  const UtView *view;
+  const UtPalette *palette;
+  guint storey;
+  const UtSelectDrag *drag; /* for the band and the knob */
+  gboolean focused;
+  int device_scale;
+} UtScene;
+
+/* The kept picture, and for what it was made. */
+typedef struct
+{
+  GskRenderNode *node;
+  const UtPlan *plan; /* owned */
+  UtView view;
+  const UtPalette *palette;
+  guint storey;
+  int device_scale;
+} UtStillLayer;
+
+void ut_still_layer_clear (UtStillLayer *layer);
+
+/* Height of the key along the lower edge of a sheet this wide, in pixels. */
+double ut_scene_key_height (double width_px);
+
+/* Appends all layers. */
+void ut_scene_snapshot (const UtScene *scene, UtStillLayer *still, GtkSnapshot *snapshot);

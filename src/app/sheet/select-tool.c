@@ -1,0 +1,220 @@
+#include <math.h>
+
+#include <glib/gi18n.h>
+
+#include "hit.h"
+#include "tool.h"
+
+double
+ut_power_handle_px (const UtRadio *cell, double power_dbm)
+{
+  double range_db = cell->power_max_dbm - cell->power_min_dbm;
+
+  return range_db > 0 ? UT_POWER_HANDLE_PX * CLAMP ((power_dbm - cell->power_min_dbm) / range_db, 0, 1) : 0;
+}
+
+double
+ut_snap_step_m (double px_per_m)
+{
+  static const double steps_m[] = { 0.01, 0.05, 0.1, 0.5, 1 };
+
+  for (gsize i = 0; i < G_N_ELEMENTS (steps_m); i++)
+    if (steps_m[i] * px_per_m >= 2)
+      return steps_m[i];
+  return steps_m[G_N_ELEMENTS (steps_m) - 1];
+}
+
+static UtHit
+hit_at (UtDesk *desk, const UtPointer *pointer, guint skip)
+{
+  return ut_hit (ut_desk_plan (desk),
+                 ut_desk_answer (desk),
+                 pointer->storey,
+                 pointer->x_m,
+                 pointer->y_m,
+                 UT_REACH_PX / pointer->px_per_m,
+                 skip);
+}
+
+/* Kind and id of what was hit; a link stands for its terminal. */
+static gboolean
+picked (UtDesk *desk, const UtHit *hit, UtRadioKind *kind, const char **id)
+{
+  const UtPlan *plan = ut_desk_plan (desk);
+
+  if (hit->kind == UT_HIT_NOTHING)
+    return FALSE;
+  *kind = hit->kind == UT_HIT_CELL ? UT_KIND_CELL : UT_KIND_TERMINAL;
+  *id = hit->kind == UT_HIT_CELL ? ut_plan_cell (plan, hit->index)->radio.id : ut_plan_terminal (plan, hit->index)->radio.id;
+  return TRUE;
+}
+
+void
+ut_select_click (UtDesk *desk, const UtPointer *pointer, guint repeat)
+{
+  UtSelection *selection = ut_desk_selection (desk);
+  UtHit hit = hit_at (desk, pointer, repeat);
+  UtRadioKind kind;
+  const char *id;
+
+  if (!picked (desk, &hit, &kind, &id))
+    {
+      if (!pointer->add)
+        ut_selection_clear (selection);
+      return;
+    }
+  if (pointer->add)
+    ut_selection_toggle (selection, kind, id);
+  else
+    ut_selection_set_one (selection, kind, id);
+}
+
+/* The one selected cell whose power knob is under the pointer, or NULL. */
+static const UtRadio *
+knob_at (UtDesk *desk, const UtPointer *pointer)
+{
+  UtSelection *selection = ut_desk_selection (desk);
+  const UtPlan *plan = ut_desk_plan (desk);
+  const UtRadio *cell;
+
+  if (ut_selection_size (selection) != 1 || ut_selection_pick (selection, 0)->kind != UT_KIND_CELL)
+    return NULL;
+  cell = ut_plan_radio (plan, UT_KIND_CELL, ut_selection_pick (selection, 0)->id);
+  if (cell == NULL || ut_plan_find_storey (plan, cell->storey) != (int) pointer->storey)
+    return NULL;
+  double dx_px = (pointer->x_m - cell->x_m) * pointer->px_per_m - UT_POWER_HANDLE_X_PX;
+  double dy_px = (pointer->y_m - cell->y_m) * pointer->px_per_m - ut_power_handle_px (cell, cell->power_dbm);
+  return hypot (dx_px, dy_px) <= 8 ? cell : NULL;
+}
+
+void
+ut_select_begin (UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer)
+{
+  const UtRadio *cell = knob_at (desk, pointer);
+  UtHit hit = hit_at (desk, pointer, 0);
+  UtRadioKind kind;
+  const char *id;
+
+  *drag = (UtSelectDrag){
+    .x0_m = pointer->x_m,
+    .y0_m = pointer->y_m,
+    .x1_m = pointer->x_m,
+    .y1_m = pointer->y_m,
+    .plan = ut_plan_ref (ut_desk_plan (desk)),
+  };
+  if (cell != NULL)
+    {
+      drag->kind = UT_DRAG_POWER;
+      drag->id = g_strdup (cell->id);
+      drag->power0_dbm = cell->power_dbm;
+      return;
+    }
+  if (hit.kind == UT_HIT_LINK || !picked (desk, &hit, &kind, &id))
+    {
+      drag->kind = UT_DRAG_BAND;
+      return;
+    }
+  drag->kind = UT_DRAG_MOVE;
+  if (!ut_selection_has (ut_desk_selection (desk), kind, id))
+    {
+      if (pointer->add)
+        ut_selection_add (ut_desk_selection (desk), kind, id);
+      else
+        ut_selection_set_one (ut_desk_selection (desk), kind, id);
+    }
+}
+
+/* A move in whole steps of the snap grid. */
+static double
+snapped (double value_m, const UtPointer *pointer)
+{
+  double step_m = ut_snap_step_m (pointer->px_per_m);
+
+  return pointer->no_snap ? value_m : round (value_m / step_m) * step_m;
+}
+
+static void
+select_in_band (const UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer)
+{
+  const UtPlan *plan = ut_desk_plan (desk);
+  UtSelection *selection = ut_desk_selection (desk);
+  double low_x = MIN (drag->x0_m, drag->x1_m), high_x = MAX (drag->x0_m, drag->x1_m);
+  double low_y = MIN (drag->y0_m, drag->y1_m), high_y = MAX (drag->y0_m, drag->y1_m);
+
+  ut_selection_freeze (selection);
+  if (!pointer->add)
+    ut_selection_clear (selection);
+  for (guint i = 0; i < plan->cells->len + plan->terminals->len; i++)
+    {
+      gboolean is_cell = i < plan->cells->len;
+      const UtRadio *radio = is_cell ? &ut_plan_cell (plan, i)->radio : &ut_plan_terminal (plan, i - plan->cells->len)->radio;
+
+      if (ut_plan_find_storey (plan, radio->storey) == (int) pointer->storey && radio->x_m >= low_x && radio->x_m <= high_x
+          && radio->y_m >= low_y && radio->y_m <= high_y)
+        ut_selection_add (selection, is_cell ? UT_KIND_CELL : UT_KIND_TERMINAL, radio->id);
+    }
+  ut_selection_thaw (selection);
+}
+
+void
+ut_select_update (UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer)
+{
+  drag->x1_m = pointer->x_m;
+  drag->y1_m = pointer->y_m;
+  switch (drag->kind)
+    {
+    case UT_DRAG_MOVE:
+      ut_desk_set_draft (desk,
+                         ut_desk_moved (desk,
+                                        drag->plan,
+                                        snapped (drag->x1_m - drag->x0_m, pointer),
+                                        snapped (drag->y1_m - drag->y0_m, pointer)));
+      break;
+    case UT_DRAG_BAND:
+      select_in_band (drag, desk, pointer);
+      break;
+    case UT_DRAG_POWER:
+      {
+        const UtRadio *cell = ut_plan_radio (drag->plan, UT_KIND_CELL, drag->id);
+        double db_per_px = (cell->power_max_dbm - cell->power_min_dbm) / UT_POWER_HANDLE_PX;
+
+        ut_desk_set_draft (desk,
+                           ut_plan_with_set_power (drag->plan,
+                                                   UT_KIND_CELL,
+                                                   drag->id,
+                                                   drag->power0_dbm + (drag->y1_m - drag->y0_m) * pointer->px_per_m * db_per_px));
+        break;
+      }
+    case UT_DRAG_NONE:
+      break;
+    }
+}
+
+static void
+drag_clear (UtSelectDrag *drag)
+{
+  g_clear_pointer (&drag->plan, ut_plan_unref);
+  g_clear_pointer (&drag->id, g_free);
+  drag->kind = UT_DRAG_NONE;
+}
+
+void
+ut_select_end (UtSelectDrag *drag, UtDesk *desk)
+{
+  g_autofree char *label = NULL;
+
+  if (drag->kind == UT_DRAG_MOVE && ut_desk_has_draft (desk))
+    label = ut_desk_step_label (desk, _ ("Move"));
+  else if (drag->kind == UT_DRAG_POWER && ut_desk_has_draft (desk))
+    label = g_strconcat (_ ("Set Power of"), " ", drag->id, NULL);
+  if (label != NULL)
+    ut_desk_commit_draft (desk, label, NULL);
+  drag_clear (drag);
+}
+
+void
+ut_select_cancel (UtSelectDrag *drag, UtDesk *desk)
+{
+  ut_desk_drop_draft (desk);
+  drag_clear (drag);
+}

@@ -1,0 +1,35 @@
+/* What the two halves of the window share: window.c (its parts) and window-files.c (opening, saving, closing). */
+#pragma once
+
+#include "details.h"
+#include "links-panel.h"
+#include "window.h"
+
+struct _UtWindow
+{
+  GtkApplicationWindow parent;
+  UtDesk *desk;
+  gboolean closing; /* the question about unsaved changes was answered */
+  UtSheet *sheet;
+  UtLinksPanel *links;
+  UtDetails *details;
+  GtkLabel *title_label, *subtitle_label, *verdict_label, *hold_label, *tray_cell, *tray_terminal;
+  GtkWidget *undo_button, *redo_button;
+  GtkDropDown *aim_drop, *storey_drop;
+  GtkAdjustment *hold_adjustment;
+  GtkScale *hold_scale;
+  GMenu *recent_menu;
+  gboolean showing; /* widgets are being brought to the desk's state */
+};
+
+/* Another document takes the desk's place. */
+void ut_window_set_document (UtWindow *window, UtDocument *document);
+
+/* Actions of window-files.c, to be added to the window's. */
+void ut_window_add_file_actions (UtWindow *window);
+
+/* Asks when there is something unsaved; TRUE: the window stays for now. */
+gboolean ut_window_asks_before_closing (UtWindow *window);
+
+/* Fills the menu of recent plans. */
+void ut_window_fill_recent (UtWindow *window);

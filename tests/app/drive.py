@@ -1,0 +1,243 @@
+"""Drives the desktop program from outside, as a user would: pointer, keys, drag and drop, actions.
+
+usage: drive.py UNDERTONE UNDERTONE-CLI EXAMPLES_FOLDER   (on a display and a session bus of its own: tests/xvfb.sh, dbus-run-session)
+"""
+import json
+import os
+import pathlib
+import re
+import subprocess
+import sys
+import tempfile
+import time
+
+import gi
+
+gi.require_version("Atspi", "2.0")
+from gi.repository import Atspi, Gio, GLib  # noqa: E402
+
+sys.path.insert(0, str(pathlib.Path(__file__).resolve().parents[1]))
+from tap import Tap, run, same  # noqa: E402
+
+program, cli, examples = sys.argv[1], sys.argv[2], pathlib.Path(sys.argv[3])
+ID, PATH = "io.undertone.Undertone", "/io/undertone/Undertone"
+tap = Tap()
+
+
+class App:
+    """The running program."""
+
+    def __init__(self, plan):
+        self.log_file = tempfile.TemporaryFile()
+        self.process = subprocess.Popen([program, str(plan)], stdout=self.log_file, stderr=subprocess.STDOUT)
+        self.bus = Gio.bus_get_sync(Gio.BusType.SESSION)
+        self.frame = self.wait("the window", self.find_frame)
+        self.sheet = self.wait("the sheet", lambda: self.find("image", "Sheet"))
+        self.window = self.wait("the X window", lambda: self.search("search", "--onlyvisible", "--pid", self.process.pid))[-1]
+
+    def log(self):
+        self.log_file.seek(0)
+        return self.log_file.read().decode(errors="replace")
+
+    def wait(self, what, look, seconds=20):
+        end = time.monotonic() + seconds
+        while time.monotonic() < end:
+            try:
+                found = look()
+                if found:
+                    return found
+            except GLib.Error:
+                pass
+            if self.process.poll() is not None:
+                raise AssertionError(f"the program ended while waiting for {what}:\n{self.log()}")
+            time.sleep(0.02)
+        raise AssertionError(f"waited for {what} in vain:\n{self.log()}")
+
+    def find_frame(self):
+        desktop = Atspi.get_desktop(0)
+        for i in range(desktop.get_child_count()):
+            app = desktop.get_child_at_index(i)
+            if app and app.get_process_id() == self.process.pid and app.get_child_count():
+                return app.get_child_at_index(0)
+        return None
+
+    def walk(self, node=None):
+        node = node or self.frame
+        yield node
+        for i in range(node.get_child_count()):
+            child = node.get_child_at_index(i)
+            if child:
+                yield from self.walk(child)
+
+    def find(self, role, name):
+        return next((node for node in self.walk() if node.get_role_name() == role and name in node.get_name()), None)
+
+    def description(self):
+        self.sheet.clear_cache()
+        return self.sheet.get_description()
+
+    def actions(self, method, signature, arguments, window=True):
+        return self.bus.call_sync(ID, f"{PATH}/window/1" if window else PATH, "org.gtk.Actions", method, GLib.Variant(signature, arguments), None, 0, 10000, None)
+
+    def act(self, name, *parameters, window=True):
+        self.actions("Activate", "(sava{sv})", (name, list(parameters), {}), window)
+
+    def describe(self, name):
+        """(enabled, state or None)"""
+        enabled, _, state = self.actions("Describe", "(s)", (name,)).unpack()[0]
+        return enabled, state[0] if state else None
+
+    # Pointer: places come from the program itself, never from constants.
+
+    def xdo(self, *words):
+        subprocess.run(["xdotool", *map(str, words)], check=True)
+
+    def search(self, *words):
+        return subprocess.run(["xdotool", *map(str, words)], capture_output=True, text=True).stdout.split()
+
+    def offset(self, node):
+        box = Atspi.Component.get_extents(node, Atspi.CoordType.WINDOW)
+        frame = Atspi.Component.get_extents(self.frame, Atspi.CoordType.WINDOW)
+        shell = dict(line.split("=") for line in self.search("getwindowgeometry", "--shell", self.window))
+        return (int(shell["X"]) + (int(shell["WIDTH"]) - frame.width) / 2 + box.x, int(shell["Y"]) + (int(shell["HEIGHT"]) - frame.height) / 2 + box.y, box)
+
+    def on_sheet(self, x_m, y_m):
+        x, y, _ = self.offset(self.sheet)
+        scale, origin_x, origin_y = self.describe("view")[1]
+        return round(x + origin_x + x_m * scale), round(y + origin_y - y_m * scale)
+
+    def middle_of(self, node):
+        x, y, box = self.offset(node)
+        return round(x + box.width / 2), round(y + box.height / 2)
+
+    def drag(self, start, end, steps=8):
+        self.xdo("mousemove", *start, "mousedown", 1)
+        for i in range(1, steps + 1):
+            self.xdo("mousemove", *(round(a + (b - a) * i / steps) for a, b in zip(start, end)))
+            time.sleep(0.03)
+        time.sleep(0.1)
+        self.xdo("mouseup", 1)
+
+    def verdict(self):
+        """The last sentence of the sheet's description is the verdict as shown."""
+        return self.description().split(". ", 1)[1]
+
+    def quit(self):
+        self.act("quit", window=False)
+        return self.process.wait(20)
+
+
+def sentence(plan, *options):
+    return run(cli, "solve", str(plan), *options).stdout.decode().split("\n")[2]
+
+
+with tempfile.TemporaryDirectory() as folder:
+    plan = pathlib.Path(folder) / "store.undertone"
+    start = (examples / "cold-store.undertone").read_bytes()
+    plan.write_bytes(start)
+    app = App(plan)
+    app.wait("the answer", lambda: "14 targets" in app.description())
+    tap.check("opens the plan and says what the command line says", same("verdict", app.verdict(), sentence(plan)))
+
+    # The table's figures are the command line's, to the digits shown.
+    answer = json.loads(run(cli, "solve", str(plan), "--format", "json").stdout)
+    cells = app.wait("the table", lambda: [node.get_name() for node in app.walk() if node.get_role_name() == "label" and re.fullmatch(r"T\d+", node.get_name())])
+    labels = [node.get_name() for node in app.walk() if node.get_role_name() == "label"]
+    faults = []
+    for link in answer["links"]:
+        if link["terminal"] not in cells:
+            continue  # below the part of the table that is in sight
+        at = labels.index(link["terminal"])
+        shown = labels[at + 1:at + 8]
+        expected = [link["cell"], *(f"{round(link[key], 6):.{digits}f}".replace("-0.00", "0.00") for key, digits in
+                                    (("power_dbm", 2), ("target_db", 1), ("sinr_db", 2), ("margin_db", 2), ("signal_dbm", 1), ("interference_dbm", 1)))]
+        faults += same(link["terminal"], shown, expected)
+    tap.check("the links table shows the command line's figures", faults + ([] if cells else ["no row"]))
+
+    for word, option in (("up", ("--direction", "up")), ("down", ())):
+        app.act("direction", GLib.Variant("s", word))
+        app.wait(f"{word}link", lambda option=option: app.verdict() == sentence(plan, *option))
+    app.act("aim", GLib.Variant("s", "as-set"))
+    app.wait("as set", lambda: app.verdict() == sentence(plan, "--aim", "as-set"))
+    app.act("aim", GLib.Variant("s", "least-power"))
+    app.wait("least powers", lambda: app.verdict() == sentence(plan))
+    tap.check("direction and aim change the answer as on the command line", [])
+
+    # Drag a cell: the answer follows, and what is saved gives the same on the command line.
+    before = app.verdict()
+    app.drag(app.on_sheet(60, 24), app.on_sheet(40, 30))
+    app.wait("the cell selected", lambda: "C3 selected at" in app.description())
+    app.wait("another answer", lambda: app.verdict() != before)
+    moved = pathlib.Path(folder) / "moved.undertone"
+    app.act("save-to", GLib.Variant("s", str(moved)))
+    app.wait("the file", moved.exists)
+    cell = next(c for c in json.loads(moved.read_text())["cells"] if c["id"] == "C3")
+    tap.check("dragging C3 moves it and changes the verdict",
+              ([] if abs(cell["x_m"] - 40) < 1 and abs(cell["y_m"] - 30) < 1 else [f"at {cell['x_m']}, {cell['y_m']}"]) + same("verdict", app.verdict(), sentence(moved)))
+
+    # Escape drops a drag.
+    app.xdo("mousemove", *app.on_sheet(80, 24), "mousedown", 1)
+    for i in range(1, 6):
+        app.xdo("mousemove_relative", "--", -12, 9)
+        time.sleep(0.03)
+    app.xdo("key", "Escape")
+    app.xdo("mouseup", 1)
+    time.sleep(0.1)
+    app.act("save-to", GLib.Variant("s", str(moved)))
+    tap.check("Escape gives a drag up", same("C4", [c["x_m"] for c in json.loads(moved.read_text())["cells"] if c["id"] == "C4"], [80]))
+
+    # From the tray: real drag and drop.
+    app.drag(app.middle_of(app.find("label", "○ Terminal")), app.on_sheet(30, 24), 10)
+    app.wait("the dropped terminal", lambda: "4 cells, 15 terminals" in app.description())
+    app.drag(app.middle_of(app.find("label", "■ Cell")), app.on_sheet(30, 26), 10)
+    app.wait("the dropped cell", lambda: "5 cells, 15 terminals" in app.description())
+    tap.check("a terminal and a cell dragged from the tray", same("selected", "C5 selected at 30" in app.description(), True))
+
+    # Keys: nudge, delete; click to place.
+    app.xdo("mousemove", *app.on_sheet(20, 20))
+    app.xdo("key", "Right", "shift+Up")
+    app.wait("the nudge", lambda: re.search(r"C5 selected at 30\.1\d, 27\.\d+ m", app.description()))
+    app.xdo("key", "Delete")
+    app.wait("the deletion", lambda: "4 cells, 15 terminals" in app.description())
+    app.act("tool", GLib.Variant("s", "terminal"))
+    x, y = app.on_sheet(10, 26)
+    app.xdo("mousemove", x, y, "click", 1)
+    app.wait("the placed terminal", lambda: "4 cells, 16 terminals" in app.description())
+    tap.check("nudge, delete and click to place", same("tool", app.describe("tool")[1], "select"))
+
+    # Wheel: the point under the pointer stays.
+    scale, origin_x, origin_y = app.describe("view")[1]
+    x, y = app.on_sheet(60, 24)
+    app.xdo("mousemove", x, y, "click", 4, "click", 4)
+    app.wait("the zoom", lambda: app.describe("view")[1][0] > 1.3 * scale)
+    tap.check("the wheel zooms about the pointer", [f"{a} became {b}" for a, b in zip((x, y), app.on_sheet(60, 24)) if abs(a - b) > 1])
+    app.act("fit")
+
+    # Undo everything, save, and the bytes are those of the start.
+    steps = 0
+    while app.describe("undo")[0]:
+        app.act("undo")
+        steps += 1
+        assert steps < 50
+    app.wait("the start again", lambda: "4 cells, 14 terminals" in app.description() and app.verdict() == before)
+    app.act("save")
+    app.wait("the saved file", lambda: moved.read_bytes() == start)
+    tap.check("undoing every step and saving gives the same bytes", same("steps", steps, 6))
+    app.act("open-uri", GLib.Variant("s", plan.as_uri()))
+    app.wait("a second window", lambda: Atspi.get_desktop(0) and "store.undertone" in [n.get_name() for n in app.walk(app.frame.get_parent())])
+    tap.check("another plan opens in a window of its own", [])
+
+    code = app.quit()
+    noise = [line for line in app.log().splitlines() if re.search("CRITICAL|WARNING|ERROR|runtime error|Sanitizer", line)]
+    tap.check("ends with 0 and without a complaint", same("exit", code, 0) + noise)
+
+    # What is broken is told of and changes nothing.
+    broken = pathlib.Path(folder) / "broken.undertone"
+    broken.write_text('{"undertone": 1, oops}')
+    app = App(broken)
+    app.wait("the message", lambda: next((n for n in app.walk(app.frame.get_parent()) if "cannot be opened" in n.get_name()), None))
+    told = next(n.get_name() for n in app.walk(app.frame.get_parent()) if "line 1, column" in n.get_name())
+    tap.check("a broken plan is told of with its place", same("place", "line 1, column 18" in told, True))
+    code = app.quit()
+    tap.check("and the program ends well", same("exit", code, 0) + [line for line in app.log().splitlines() if re.search("CRITICAL|WARNING|Sanitizer", line)])
+tap.end()
