@@ -9,7 +9,7 @@ G_DECLARE_FINAL_TYPE (UtSolving, ut_solving, UT, SOLVING, GObject)
 /* Signal "answered": study or staleness became another. */
 UtSolving *ut_solving_new (void);
 
-/* Asks for the answer to `plan`. Answered before it returns when the last answers took less than a frame can bear; otherwise the old answer
+/* Asks for the answer to `plan`. Answered before it returns when the last answer of its kind took less than a frame can bear; otherwise the old answer
  * stays, stale, until the new one arrives. What was asked before and is not answered yet is cancelled. */
 void ut_solving_ask (UtSolving *solving, const UtPlan *plan, const UtQuestion *question);
 

@@ -221,6 +221,8 @@ link_ends (const UtPlan *plan, const UtLinkAnswer *link, const UtPaintOptions *o
 static void
 paint_links (cairo_t *cr, const UtPlan *plan, const UtStudy *study, const UtPaintOptions *options)
 {
+  if (options->plates)
+    cairo_set_antialias (cr, CAIRO_ANTIALIAS_FAST);
   for (guint i = 0; i < study->links->len; i++)
     {
       const UtLinkAnswer *link = ut_study_link (study, i);
@@ -235,6 +237,7 @@ paint_links (cairo_t *cr, const UtPlan *plan, const UtStudy *study, const UtPain
       cairo_stroke (cr);
     }
   cairo_set_dash (cr, NULL, 0, 0);
+  cairo_set_antialias (cr, CAIRO_ANTIALIAS_DEFAULT);
 }
 
 /* ---- radios ---- */
@@ -324,7 +327,7 @@ ut_paint_take_radios (GArray *boxes, const UtPlan *plan, const UtPaintOptions *o
 static void
 label_radio (cairo_t *cr, GArray *boxes, const UtRadio *radio, gboolean bold, const UtPaintOptions *options)
 {
-  UtTextStyle style = { .size = UT_TEXT_OF_MARK * options->mark, .bold = bold };
+  UtTextStyle style = { .size = UT_TEXT_OF_MARK * options->mark, .bold = bold, .plate = options->plates };
   double x, y, width, height, gap = 0.65 * options->mark;
 
   to_target (options, radio->x_m, radio->y_m, &x, &y);
@@ -363,7 +366,7 @@ link_text (const UtLinkAnswer *link, const char *elsewhere)
 static void
 label_links (cairo_t *cr, GArray *boxes, const UtPlan *plan, const UtStudy *study, const UtPaintOptions *options)
 {
-  UtTextStyle style = { .size = UT_TEXT_OF_MARK * options->mark * 0.9 };
+  UtTextStyle style = { .size = UT_TEXT_OF_MARK * options->mark * 0.9, .plate = options->plates };
 
   for (guint i = 0; i < study->links->len; i++)
     {

@@ -400,6 +400,21 @@ draw_north (const UtScene *scene, cairo_t *cr)
 
 /* ---- all of it ---- */
 
+/* While an answer is being renewed the links of the old one stay, faint and without figures, where they were. */
+static void
+draw_old_links (const UtScene *scene, cairo_t *cr, UtPaintOptions options)
+{
+  UtStudy *old = ut_solving_study (ut_desk_solving (scene->desk));
+
+  if (ut_desk_answer (scene->desk) != NULL || old == NULL || scene->storey >= old->gains->plan->storeys->len)
+    return;
+  options.radios = options.labels = FALSE;
+  cairo_push_group (cr);
+  ut_paint_plan (cr, old->gains->plan, old, &options);
+  cairo_pop_group_to_source (cr);
+  cairo_paint_with_alpha (cr, 0.3);
+}
+
 static void
 draw_living (const UtScene *scene, cairo_t *cr)
 {
@@ -409,10 +424,12 @@ draw_living (const UtScene *scene, cairo_t *cr)
   g_autoptr (GArray) boxes = ut_boxes_new ();
 
   options.links = options.radios = options.labels = TRUE;
+  options.plates = TRUE;
   options.boxes = boxes;
   ut_paint_take_radios (boxes, plan, &options);
   take_power_handle (scene, boxes);
   draw_interferers (scene, cr, boxes);
+  draw_old_links (scene, cr, options);
   ut_paint_plan (cr, plan, ut_desk_answer (scene->desk), &options);
   draw_selection (scene, cr);
   draw_band (scene, cr);
