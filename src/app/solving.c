@@ -1,7 +1,7 @@
 #include "solving.h"
 
 /* A frame has 16.7 ms; drawing needs its share. */
-#define BUDGET_MS 6.0
+#define BUDGET_MS 10.0
 /* A slow answer is only begun once nothing newer was asked for this long. */
 #define DEBOUNCE_MS 60
 
