@@ -178,7 +178,7 @@ static UtExit
 run (char **words, const Texts *texts)
 {
   const Verb *verb = words[0] != NULL ? find_verb (words[0]) : NULL;
-  UtOrder order = { 0 };
+  UtOrder order = { .question = { .reserves = TRUE } };
 
   if (words[0] == NULL)
     {

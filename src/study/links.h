@@ -76,5 +76,18 @@ void ut_links_powers (const UtLinks *links, const double *solution, UtPowers *po
 /* As the radios are set in the plan. */
 void ut_links_powers_as_set (const UtLinks *links, UtPowers *powers);
 
+/* Whether any sender has power steps that apply. */
+gboolean ut_links_have_steps (const UtLinks *links);
+
+/* The least allowed levels with factor `factor` on every target, continuous radios at their least powers; FALSE where there are none. */
+gboolean ut_links_least_levels (const UtLinks *links, double factor, UtPowers *powers);
+
+/* Every radio at the smaller of its top level (continuous: its limit) and the level it needs, from the bottom up. */
+void ut_links_clipped_levels (const UtLinks *links, UtPowers *powers);
+
+/* The supremum in dB by which this link's target alone can change so that all targets are met, serving cells fixed, limits and minima kept,
+ * continuous powers; NAN where no change of it helps. The link must have a cell. */
+double ut_links_reserve_db (const UtLinks *links, guint index);
+
 /* Who disturbs link `index` at these powers: appended to `interference` (of UtInterference), strongest first, nothing that is 0. */
 void ut_links_interference (const UtLinks *links, const UtPowers *powers, guint index, GArray *interference);

@@ -152,6 +152,14 @@ judge (UtStudy *study, const UtLinks *links, Solution *solution)
       status = ut_feasibility (&solution->system, &feasibility, NULL);
       study->verdict = status == UT_POWER_OK ? verdict_of (feasibility) : verdict_beyond_numbers (study);
     }
+  if (study->verdict == UT_VERDICT_MET && ut_links_have_steps (links))
+    {
+      UtPowers levels = ut_powers_new (links);
+
+      if (!ut_links_least_levels (links, 1, &levels))
+        study->verdict = UT_VERDICT_STEP_LIMITED;
+      ut_powers_clear (&levels);
+    }
   solution->at_headroom = g_new0 (double, links->n_unknowns);
   if (!level_out_of_reach (links))
     solution->has_headroom = ut_headroom (&solution->system, solution->at_headroom, &solution->headroom) == UT_POWER_OK;
@@ -194,12 +202,32 @@ choose_equal_margin (const UtLinks *links, Solution *solution, UtPowers *powers)
   ut_system_clear (&clipped);
 }
 
+/* Least powers with the targets raised by hold_db, on the ladders where a step is set.  FALSE where there are none. */
+static gboolean
+least_held (const UtLinks *links, const Solution *solution, double hold_db, UtPowers *powers)
+{
+  g_autofree double *p = g_new0 (double, MAX (links->n_unknowns, 1));
+
+  if (ut_links_have_steps (links))
+    return ut_links_least_levels (links, ut_ratio_from_db (hold_db), powers);
+  if (links->n_unknowns > 0
+      && ut_least_powers (&solution->system, ut_ratio_from_db (hold_db), UT_LIFT_NOTHING, p, NULL) != UT_POWER_OK)
+    return FALSE;
+  ut_links_powers (links, p, powers);
+  return TRUE;
+}
+
 static void
 choose_least (UtStudy *study, const UtLinks *links, Solution *solution, UtPowers *powers)
 {
-  g_autofree double *p = g_new0 (double, MAX (links->n_unknowns, 1));
   double hold_db = study->question.hold_db;
 
+  if (study->verdict == UT_VERDICT_STEP_LIMITED)
+    {
+      study->fallback = UT_FALLBACK_CLIPPED_STEPS;
+      ut_links_clipped_levels (links, powers);
+      return;
+    }
   if (study->verdict != UT_VERDICT_MET)
     study->fallback = UT_FALLBACK_EQUAL_MARGIN;
   else if (links->n_unknowns > 0 && hold_db > 0 && hold_db > study->headroom_db)
@@ -210,14 +238,14 @@ choose_least (UtStudy *study, const UtLinks *links, Solution *solution, UtPowers
             hold_db,
             study->headroom_db);
     }
-  else if (links->n_unknowns > 0
-           && ut_least_powers (&solution->system, ut_ratio_from_db (hold_db), UT_LIFT_NOTHING, p, NULL) != UT_POWER_OK)
-    study->fallback = UT_FALLBACK_EQUAL_MARGIN; /* held exactly at the edge */
-
+  else if (!least_held (links, solution, hold_db, powers))
+    {
+      study->fallback = UT_FALLBACK_EQUAL_MARGIN;
+      if (ut_links_have_steps (links))
+        warn (study, "%.3g dB cannot be kept in hand on the radios' power steps; every target is raised by the headroom instead, steps ignored", hold_db);
+    }
   if (study->fallback == UT_FALLBACK_EQUAL_MARGIN)
     choose_equal_margin (links, solution, powers);
-  else
-    ut_links_powers (links, p, powers);
 }
 
 static void
@@ -427,8 +455,21 @@ study_alloc (const UtPlan *plan, const UtQuestion *question, const UtStudy *prev
   return study;
 }
 
+/* The reserve of every link; none has any where a link has no cell or a level cannot be reached: then no change of one target heals the plan. */
 static void
-answer (UtStudy *study)
+answer_reserves (UtStudy *study, const UtLinks *links, GCancellable *cancellable)
+{
+  for (guint i = 0; i < links->links->len; i++)
+    if (ut_links_link (links, i)->cell < 0)
+      return;
+  if (level_out_of_reach (links))
+    return;
+  for (guint i = 0; i < links->links->len && !g_cancellable_is_cancelled (cancellable); i++)
+    g_array_index (study->links, UtLinkAnswer, i).reserve_db = ut_links_reserve_db (links, i);
+}
+
+static void
+answer (UtStudy *study, GCancellable *cancellable)
 {
   g_autoptr (UtLinks) links = ut_links_new (study->gains, study->question.direction);
   UtPowers powers = ut_powers_new (links);
@@ -438,6 +479,8 @@ answer (UtStudy *study)
   choose_powers (study, links, &solution, &powers);
   for (guint i = 0; i < links->links->len; i++)
     answer_link (study, links, &powers, i);
+  if (study->question.reserves)
+    answer_reserves (study, links, cancellable);
   answer_transmitters (study, links, &powers);
   warn_of_plan (study);
   warn_of_eirp (study);
@@ -452,7 +495,7 @@ ut_study_new_cancellable (const UtPlan *plan, const UtQuestion *question, const 
   UtStudy *study = study_alloc (plan, question, previous, cancellable);
 
   if (!g_cancellable_is_cancelled (cancellable))
-    answer (study);
+    answer (study, cancellable);
   if (g_cancellable_is_cancelled (cancellable))
     g_clear_pointer (&study, ut_study_unref);
   return study;

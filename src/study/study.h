@@ -27,7 +27,8 @@ typedef struct
 {
   UtDirection direction;
   UtAim aim;
-  double hold_db; /* >= 0: kept in hand on every target when powers are chosen */
+  double hold_db;    /* >= 0: kept in hand on every target when powers are chosen */
+  gboolean reserves; /* compute the reserve of every link */
 } UtQuestion;
 
 /* A link is marked met from here up. */

@@ -57,8 +57,18 @@ for by_db, lacks_db in ((6, 4.25), (24, 4.51)):
     turned = solve(program, changed(store, turn_down(by_db)), "--aim", "as-set")
     tap.check(f"cold store, all turned down alike by {by_db} dB: T4 stays short",
               near("T4", margins(turned)["T4"], -lacks_db, 0.006))
-down = solve(program, store)
-tap.check("cold store, downlink: met with least powers",
+stepped = solve(program, store)
+tap.check("cold store, downlink: met on the cells' 1 dB steps with 5, 0, 5, 0 dBm", same("verdict", stepped["verdict"], "met")
+          + [fault for cell, dbm in (("C1", 5), ("C2", 0), ("C3", 5), ("C4", 0)) for fault in near(cell, powers(stepped)[cell], dbm, 1e-9)])
+
+
+def continuous(plan):
+    for radio in plan["cells"] + plan["terminals"]:
+        radio["power_step_db"] = 0
+
+
+down = solve(program, changed(store, continuous))
+tap.check("cold store, downlink: least powers without steps",
           same("verdict", down["verdict"], "met") + same("exit", down["exit"], 0) + near("radius", down["spectral_radius"], 0.705, 6e-4)
           + near("headroom", down["headroom_db"], 1.517, 6e-4)
           + [fault for cell, dbm in (("C1", 4.8), ("C2", 0), ("C3", 4.6), ("C4", 0)) for fault in near(cell, powers(down)[cell], dbm, 0.06)])

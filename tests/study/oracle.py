@@ -393,4 +393,5 @@ def main():
     return 1 if bad or missing else 0
 
 
-sys.exit(main())
+if __name__ == "__main__":
+    sys.exit(main())
