@@ -85,6 +85,9 @@ gboolean ut_links_least_levels (const UtLinks *links, double factor, UtPowers *p
 /* Every radio at the smaller of its top level (continuous: its limit) and the level it needs, from the bottom up. */
 void ut_links_clipped_levels (const UtLinks *links, UtPowers *powers);
 
+/* The links that set the headroom, the most involved first: terminal indices appended. factor and p (n_unknowns): the headroom's lower end. */
+void ut_links_limiting (const UtLinks *links, const UtSystem *system, double factor, const double *p, GArray *terminals);
+
 /* The supremum in dB by which this link's target alone can change so that all targets are met, serving cells fixed, limits and minima kept,
  * continuous powers; NAN where no change of it helps. The link must have a cell. */
 double ut_links_reserve_db (const UtLinks *links, guint index);

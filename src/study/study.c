@@ -163,8 +163,11 @@ judge (UtStudy *study, const UtLinks *links, Solution *solution)
   solution->at_headroom = g_new0 (double, links->n_unknowns);
   if (!level_out_of_reach (links))
     solution->has_headroom = ut_headroom (&solution->system, solution->at_headroom, &solution->headroom) == UT_POWER_OK;
-  if (solution->has_headroom)
-    set_headroom (study, &solution->headroom);
+  if (!solution->has_headroom)
+    return;
+  set_headroom (study, &solution->headroom);
+  if (study->limiting_group->len == 0)
+    ut_links_limiting (links, &solution->system, solution->headroom.lower, solution->at_headroom, study->limiting_group);
 }
 
 /* Every unknown at its floor: what is shown where nothing better can be computed. */

@@ -75,7 +75,7 @@ typedef struct
   GArray *transmitters;    /* of UtTransmitterAnswer */
   GArray *links;           /* of UtLinkAnswer, in file order */
   GArray *limiting_group;  /* of guint: terminal indices; those without a cell first */
-  GArray *lacks_db;        /* of double, beside limiting_group: what a noise- or level-limited link lacks; NAN: no cell */
+  GArray *lacks_db;        /* of double, beside limiting_group when noise- or level-limited: what the link lacks; NAN: no cell */
   GArray *dropped;         /* of guint: terminal indices */
   GPtrArray *warnings;     /* of char * */
 } UtStudy;
