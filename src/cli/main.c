@@ -38,7 +38,7 @@ static const char options_help[] =
   "Options\n"
   "  --format text|json|csv      how to print (gains, solve; path: text or json)\n"
   "  --direction down|up         which end transmits (solve, page; default down)\n"
-  "  --aim least-power|equal-margin|as-set\n"
+  "  --aim least-power|equal-margin|fewest-dropped|as-set\n"
   "                              how powers are chosen (solve, page; default least-power)\n"
   "  --hold DB                   dB kept in hand on every target when powers are chosen (solve, page; default 0)\n"
   "  --output FILE               where the page goes\n"
@@ -119,11 +119,6 @@ read_question (const Texts *texts, UtQuestion *question)
     return wrong ("direction", texts->direction, "down or up");
   if (texts->aim != NULL && !ut_aim_from_word (texts->aim, &question->aim))
     return wrong ("aim", texts->aim, "least-power, equal-margin, fewest-dropped or as-set");
-  if (question->aim == UT_AIM_FEWEST_DROPPED)
-    {
-      ut_complain ("--aim fewest-dropped is not available in this version; expected least-power, equal-margin or as-set");
-      return FALSE;
-    }
   if (texts->hold != NULL && !read_hold (texts->hold, &question->hold_db))
     return wrong ("hold", texts->hold, "dB from 0 to 400, with a decimal point");
   return TRUE;

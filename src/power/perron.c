@@ -136,8 +136,6 @@ component_radius (UtSolver *solver, size_t component, double *x, UtRadius *radiu
   apply_bounds (&search);
   if (search.upper > 0)
     close_interval (&search);
-  for (size_t r = 0; r < search.n; r++)
-    x[search.rows[r]] = 0;
   *radius = (UtRadius){
     .value = search.lower + (search.upper - search.lower) / 2,
     .lower = search.lower,
@@ -147,11 +145,12 @@ component_radius (UtSolver *solver, size_t component, double *x, UtRadius *radiu
 }
 
 UtPowerStatus
-ut_spectral_radius (const UtSystem *system, UtRadius *radius)
+ut_perron (const UtSystem *system, UtRadius *radius, double *vector)
 {
   UtSolver solver;
   UtRadius most = { 0, 0, 0 };
-  double *x = calloc (system->n_unknowns + 1, sizeof *x);
+  size_t n = system->n_unknowns;
+  double *x = calloc (n + 1, sizeof *x);
   UtPowerStatus status = ut_solver_init (&solver, system);
   if (status == UT_POWER_OK && x == NULL)
     status = UT_POWER_NO_MEMORY;
@@ -159,7 +158,10 @@ ut_spectral_radius (const UtSystem *system, UtRadius *radius)
   for (size_t c = 0; status == UT_POWER_OK && c < solver.components.n; c++)
     {
       UtRadius one;
+      memset (x, 0, n * sizeof *x);
       settled = component_radius (&solver, c, x, &one) == UT_POWER_OK && settled;
+      if (vector != NULL && one.value > most.value)
+        memcpy (vector, x, n * sizeof *x);
       most.value = fmax (most.value, one.value);
       most.lower = fmax (most.lower, one.lower);
       most.upper = fmax (most.upper, one.upper);
@@ -170,4 +172,10 @@ ut_spectral_radius (const UtSystem *system, UtRadius *radius)
     return status;
   *radius = most;
   return settled || most.upper <= most.lower * (1 + ACCEPTED) ? UT_POWER_OK : UT_POWER_UNSETTLED;
+}
+
+UtPowerStatus
+ut_spectral_radius (const UtSystem *system, UtRadius *radius)
+{
+  return ut_perron (system, radius, NULL);
 }

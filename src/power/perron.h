@@ -16,3 +16,7 @@ typedef struct
  * but more than 1e-9 apart: the eigenvector does not fit the range of doubles); UT_POWER_INVALID;
  * UT_POWER_NO_MEMORY. */
 UtPowerStatus ut_spectral_radius (const UtSystem *system, UtRadius *radius);
+
+/* The same, with the right Perron vector of the first component that has this radius; vector (n_unknowns, may be NULL) is 0 outside it
+ * and untouched where the radius is 0. */
+UtPowerStatus ut_perron (const UtSystem *system, UtRadius *radius, double *vector);

@@ -35,7 +35,7 @@ ut_links_powers (const UtLinks *links, const double *solution, UtPowers *powers)
   const UtPlan *plan = links->gains->plan;
 
   for (guint c = 0; c < links->gains->n_cells; c++)
-    powers->cell_mw[c] = ut_links_is_idle (links, c) ? ut_mw_from_dbm (ut_plan_cell (plan, c)->radio.power_min_dbm) : 0;
+    powers->cell_mw[c] = links->idle[c] ? ut_mw_from_dbm (ut_plan_cell (plan, c)->radio.power_min_dbm) : 0;
   for (guint i = 0; i < links->links->len; i++)
     {
       const UtLink *link = ut_links_link (links, i);
@@ -102,9 +102,7 @@ hear_worst_terminals (const UtLinks *links, const UtPowers *powers, guint at, GA
 
       if (other->cell < 0 || other->cell == (int) at)
         continue;
-      double mw = ut_channel_coupling (plan->carrier,
-                                       ut_plan_cell (plan, at)->channel,
-                                       ut_plan_cell (plan, (guint) other->cell)->channel)
+      double mw = ut_links_coupling (links, at, (guint) other->cell)
                   * ut_plan_terminal (plan, other->terminal)->radio.activity * powers->link_mw[j]
                   * links->gains->gain[ut_gains_at (links->gains, other->terminal, at)];
       if (mw > worst[other->cell].mw)
@@ -128,9 +126,7 @@ hear_all_terminals (const UtLinks *links, const UtPowers *powers, guint index, G
         continue;
       add_interference (interference,
                         other->terminal,
-                        ut_channel_coupling (plan->carrier,
-                                             ut_plan_cell (plan, at)->channel,
-                                             ut_plan_cell (plan, (guint) other->cell)->channel)
+                        ut_links_coupling (links, at, (guint) other->cell)
                           * ut_plan_terminal (plan, other->terminal)->radio.activity * powers->link_mw[j]
                           * links->gains->gain[ut_gains_at (links->gains, other->terminal, at)]);
     }
@@ -145,9 +141,13 @@ sent_mean_mw (const UtLinks *links, const UtPowers *powers, guint cell, guint in
 
   if (!links->simultaneous || links->n_served[cell] == 0)
     return ut_plan_cell (plan, cell)->radio.activity * powers->cell_mw[cell];
-  for (guint j = 0; j < links->links->len; j++)
-    if (j != index && ut_links_link (links, j)->cell == (int) cell)
-      sum_mw += ut_plan_terminal (plan, ut_links_link (links, j)->terminal)->radio.activity * powers->link_mw[j];
+  for (guint k = 0; k < links->n_served[cell]; k++)
+    {
+      guint j = ut_links_served (links, cell, k);
+
+      if (j != index)
+        sum_mw += ut_plan_terminal (plan, ut_links_link (links, j)->terminal)->radio.activity * powers->link_mw[j];
+    }
   return sum_mw;
 }
 
@@ -162,12 +162,10 @@ hear_cells (const UtLinks *links, const UtPowers *powers, guint index, GArray *i
       gboolean own = link->cell == (int) c;
       double share;
 
-      if (!ut_plan_cell (plan, c)->radio.on || (own && !links->simultaneous))
+      if ((links->n_served[c] == 0 && !links->idle[c]) || (own && !links->simultaneous))
         continue;
       share = own ? 1 - plan->carrier->downlink_orthogonality
-                  : ut_channel_coupling (plan->carrier,
-                                         ut_plan_cell (plan, (guint) link->cell)->channel,
-                                         ut_plan_cell (plan, c)->channel);
+                  : ut_links_coupling (links, (guint) link->cell, c);
       add_interference (interference,
                         c,
                         share * sent_mean_mw (links, powers, c, index)

@@ -12,14 +12,6 @@ gain_to (const UtLinks *links, guint terminal, guint cell)
 }
 
 static double
-coupling (const UtLinks *links, guint one, guint other)
-{
-  const UtPlan *plan = links->gains->plan;
-
-  return ut_channel_coupling (plan->carrier, ut_plan_cell (plan, one)->channel, ut_plan_cell (plan, other)->channel);
-}
-
-static double
 cell_activity (const UtLinks *links, guint cell)
 {
   return ut_plan_cell (links->gains->plan, cell)->radio.activity;
@@ -38,8 +30,8 @@ idle_mw (const UtLinks *links, const UtLink *link)
   double sum_mw = 0;
 
   for (guint c = 0; c < links->gains->n_cells; c++)
-    if (ut_links_is_idle (links, c))
-      sum_mw += cell_activity (links, c) * coupling (links, (guint) link->cell, c)
+    if (links->idle[c])
+      sum_mw += cell_activity (links, c) * ut_links_coupling (links, (guint) link->cell, c)
                 * ut_mw_from_dbm (ut_plan_cell (links->gains->plan, c)->radio.power_min_dbm) * gain_to (links, link->terminal, c);
   return sum_mw;
 }
@@ -78,7 +70,7 @@ fill_orthogonal_down (const UtLinks *links, gboolean clip, UtSystem *system)
         if (c != own && links->unknown[c] >= 0)
           add_weight (system,
                       links->unknown[c],
-                      cell_activity (links, c) * coupling (links, own, c) * (gain_to (links, link->terminal, c) * per_mw));
+                      cell_activity (links, c) * ut_links_coupling (links, own, c) * (gain_to (links, link->terminal, c) * per_mw));
     }
   for (guint c = 0; c < links->gains->n_cells; c++)
     {
@@ -86,12 +78,10 @@ fill_orthogonal_down (const UtLinks *links, gboolean clip, UtSystem *system)
 
       if (links->unknown[c] < 0)
         continue;
-      for (guint i = 0; i < links->links->len; i++)
+      for (guint k = 0; k < links->n_served[c]; k++)
         {
-          const UtLink *link = ut_links_link (links, i);
+          const UtLink *link = ut_links_link (links, ut_links_served (links, c, k));
 
-          if (link->cell != (int) c)
-            continue;
           minimum_mw = link->minimum_mw;
           limit_mw = link->limit_mw;
           level_mw = MAX (level_mw, link->level_mw / link->gain);
@@ -114,15 +104,13 @@ static void
 add_uplink_group (const UtLinks *links, gboolean clip, guint at, guint from, UtSystem *system)
 {
   double minimum_mw = 0, level_mw = 0, weight = 0;
-  double isolation = coupling (links, at, from);
+  double isolation = ut_links_coupling (links, at, from);
 
-  for (guint i = 0; i < links->links->len; i++)
+  for (guint k = 0; k < links->n_served[from]; k++)
     {
-      const UtLink *link = ut_links_link (links, i);
+      const UtLink *link = ut_links_link (links, ut_links_served (links, from, k));
       double arrives;
 
-      if (link->cell != (int) from)
-        continue;
       arrives = isolation * link_activity (links, link) * gain_to (links, link->terminal, at);
       minimum_mw = MAX (minimum_mw, arrives * held (link->minimum_mw, link->limit_mw, clip));
       level_mw = MAX (level_mw, arrives * held (link->level_mw / link->gain, link->limit_mw, clip));
@@ -143,12 +131,10 @@ fill_orthogonal_up (const UtLinks *links, gboolean clip, UtSystem *system)
 
       if (links->unknown[c] < 0)
         continue;
-      for (guint i = 0; i < links->links->len; i++)
+      for (guint k = 0; k < links->n_served[c]; k++)
         {
-          const UtLink *link = ut_links_link (links, i);
+          const UtLink *link = ut_links_link (links, ut_links_served (links, c, k));
 
-          if (link->cell != (int) c)
-            continue;
           noise_mw = link->noise_mw;
           limit = MIN (limit, link->limit_mw * link->gain / link->need);
           if (link->minimum_mw > link->limit_mw * (1 + UT_LIMIT_SLACK) && !clip)
@@ -197,7 +183,7 @@ fill_simultaneous_down (const UtLinks *links, gboolean clip, UtSystem *system)
           if (j == i || other->cell < 0)
             continue;
           arrives = other->cell == link->cell ? crosstalk * link->gain
-                                              : coupling (links, (guint) link->cell, (guint) other->cell)
+                                              : ut_links_coupling (links, (guint) link->cell, (guint) other->cell)
                                                   * gain_to (links, link->terminal, (guint) other->cell);
           add_weight (system, links->link_unknown[j], link_activity (links, other) * (arrives * per_mw));
         }
@@ -207,9 +193,8 @@ fill_simultaneous_down (const UtLinks *links, gboolean clip, UtSystem *system)
       if (links->n_served[c] == 0)
         continue;
       ut_system_add_limit (system, ut_radio_limit_mw (links->gains->plan, &ut_plan_cell (links->gains->plan, c)->radio));
-      for (guint i = 0; i < links->links->len; i++)
-        if (ut_links_link (links, i)->cell == (int) c)
-          ut_system_add_member (system, (uint32_t) links->link_unknown[i]);
+      for (guint k = 0; k < links->n_served[c]; k++)
+        ut_system_add_member (system, (uint32_t) links->link_unknown[ut_links_served (links, c, k)]);
     }
 }
 
@@ -239,7 +224,7 @@ fill_simultaneous_up (const UtLinks *links, gboolean clip, UtSystem *system)
           if (j != i && other->cell >= 0)
             add_weight (system,
                         links->link_unknown[j],
-                        coupling (links, (guint) link->cell, (guint) other->cell) * link_activity (links, other)
+                        ut_links_coupling (links, (guint) link->cell, (guint) other->cell) * link_activity (links, other)
                           * (gain_to (links, other->terminal, (guint) link->cell) * per_mw));
         }
       ut_system_add_limit (system, link->limit_mw);

@@ -1,12 +1,13 @@
 #include "links.h"
 
 #include <math.h>
+#include <string.h>
 
 #include "decibel.h"
 #include "noise.h"
 
-double
-ut_channel_coupling (const UtCarrier *carrier, int one_channel, int other_channel)
+static double
+channel_coupling (const UtCarrier *carrier, int one_channel, int other_channel)
 {
   guint apart = (guint) ABS (one_channel - other_channel);
   const GArray *isolation_db = carrier->channel_isolation_db;
@@ -16,6 +17,16 @@ ut_channel_coupling (const UtCarrier *carrier, int one_channel, int other_channe
   if (isolation_db->len == 0)
     return 0;
   return ut_ratio_from_db (-g_array_index (isolation_db, double, MIN (apart, isolation_db->len) - 1));
+}
+
+void
+ut_links_set_channels (UtLinks *links, const int *channels)
+{
+  guint n = links->gains->n_cells;
+
+  for (guint c = 0; c < n; c++)
+    for (guint d = 0; d < n; d++)
+      links->coupling[(gsize) c * n + d] = channel_coupling (links->gains->plan->carrier, channels[c], channels[d]);
 }
 
 double
@@ -93,27 +104,41 @@ make_link (const UtLinks *links, guint terminal_index, double target_db, double 
   return link;
 }
 
-/* Numbers the unknowns: a cell each in orthogonal sharing, a link each in simultaneous. */
+/* Lists the links of each cell and numbers the unknowns: a cell each in orthogonal sharing, a link each in simultaneous. */
 static void
-number_unknowns (UtLinks *links)
+index_links (UtLinks *links)
 {
+  guint n_cells = links->gains->n_cells, next = 0;
+
+  links->n_served = g_new0 (guint, n_cells);
+  links->first_served = g_new0 (guint, n_cells);
+  links->served = g_new (guint, links->links->len);
+  links->unknown = g_new (int, n_cells);
+  links->link_unknown = g_new (int, links->links->len);
+  links->n_unknowns = 0;
   for (guint i = 0; i < links->links->len; i++)
     {
       int cell = ut_links_link (links, i)->cell;
 
-      links->link_unknown[i] = -1;
-      if (cell < 0)
-        continue;
-      links->n_served[cell]++;
-      if (links->simultaneous)
-        links->link_unknown[i] = (int) links->n_unknowns++;
+      links->link_unknown[i] = links->simultaneous && cell >= 0 ? (int) links->n_unknowns++ : -1;
+      if (cell >= 0)
+        links->n_served[cell]++;
     }
-  for (guint c = 0; c < links->gains->n_cells; c++)
-    links->unknown[c] = !links->simultaneous && links->n_served[c] > 0 ? (int) links->n_unknowns++ : -1;
+  for (guint c = 0; c < n_cells; c++)
+    {
+      links->first_served[c] = next;
+      next += links->n_served[c];
+      links->unknown[c] = !links->simultaneous && links->n_served[c] > 0 ? (int) links->n_unknowns++ : -1;
+    }
+  g_autofree guint *place = g_memdup2 (links->first_served, n_cells * sizeof *place);
+  for (guint i = 0; i < links->links->len; i++)
+    if (ut_links_link (links, i)->cell >= 0)
+      links->served[place[ut_links_link (links, i)->cell]++] = i;
 }
 
-UtLinks *
-ut_links_new (const UtGains *gains, UtDirection direction)
+/* All but the links. */
+static UtLinks *
+links_alloc (const UtGains *gains, UtDirection direction)
 {
   const UtPlan *plan = gains->plan;
   UtLinks *links = g_new0 (UtLinks, 1);
@@ -123,6 +148,18 @@ ut_links_new (const UtGains *gains, UtDirection direction)
   links->simultaneous = plan->carrier->sharing == UT_SHARING_SIMULTANEOUS;
   links->processing_gain = links->simultaneous ? ut_ratio_from_db (plan->carrier->processing_gain_db) : 1;
   links->links = g_array_new (FALSE, FALSE, sizeof (UtLink));
+  links->idle = g_new0 (gboolean, gains->n_cells);
+  links->coupling = g_new (double, (gsize) gains->n_cells * gains->n_cells);
+  return links;
+}
+
+UtLinks *
+ut_links_new (const UtGains *gains, UtDirection direction)
+{
+  const UtPlan *plan = gains->plan;
+  UtLinks *links = links_alloc (gains, direction);
+  g_autofree int *channels = g_new (int, gains->n_cells);
+
   for (guint t = 0; t < plan->terminals->len; t++)
     {
       const UtTerminal *terminal = ut_plan_terminal (plan, t);
@@ -135,11 +172,30 @@ ut_links_new (const UtGains *gains, UtDirection direction)
           g_array_append_val (links->links, link);
         }
     }
-  links->n_served = g_new0 (guint, gains->n_cells);
-  links->unknown = g_new (int, gains->n_cells);
-  links->link_unknown = g_new (int, links->links->len);
-  number_unknowns (links);
+  index_links (links);
+  for (guint c = 0; c < gains->n_cells; c++)
+    {
+      links->idle[c] = ut_plan_cell (plan, c)->radio.on && links->n_served[c] == 0;
+      channels[c] = ut_plan_cell (plan, c)->channel;
+    }
+  ut_links_set_channels (links, channels);
   return links;
+}
+
+UtLinks *
+ut_links_subset (const UtLinks *links, const gboolean *keep, gboolean silence)
+{
+  guint n_cells = links->gains->n_cells;
+  UtLinks *subset = links_alloc (links->gains, links->direction);
+
+  for (guint i = 0; i < links->links->len; i++)
+    if (keep[i])
+      g_array_append_val (subset->links, g_array_index (links->links, UtLink, i));
+  index_links (subset);
+  for (guint c = 0; c < n_cells; c++)
+    subset->idle[c] = links->idle[c] || (!silence && links->n_served[c] > 0 && subset->n_served[c] == 0);
+  memcpy (subset->coupling, links->coupling, (gsize) n_cells * n_cells * sizeof *subset->coupling);
+  return subset;
 }
 
 void
@@ -147,13 +203,11 @@ ut_links_free (UtLinks *links)
 {
   g_array_unref (links->links);
   g_free (links->n_served);
+  g_free (links->first_served);
+  g_free (links->served);
   g_free (links->unknown);
   g_free (links->link_unknown);
+  g_free (links->idle);
+  g_free (links->coupling);
   g_free (links);
-}
-
-gboolean
-ut_links_is_idle (const UtLinks *links, guint cell)
-{
-  return ut_plan_cell (links->gains->plan, cell)->radio.on && links->n_served[cell] == 0;
 }

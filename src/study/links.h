@@ -26,8 +26,12 @@ typedef struct
   double processing_gain; /* 1 in orthogonal sharing */
   GArray *links;          /* of UtLink, in file order */
   guint *n_served;        /* links of each cell */
+  guint *served;          /* their indices, cell after cell, ascending: those of cell c from first_served[c] on */
+  guint *first_served;
+  gboolean *idle;         /* of each cell: on, and serves no live link; in the downlink it sends its lowest power */
+  double *coupling;       /* [cell * n_cells + cell]: the isolation of their channels as a ratio, 1 on one channel, 0 where infinite */
   int *unknown;           /* orthogonal: of each cell, -1: serves nobody */
-  int *link_unknown;      /* simultaneous: of each link, -1: no cell */
+  int *link_unknown;      /* simultaneous: of each link; -1: no cell, or orthogonal */
   guint n_unknowns;
 } UtLinks;
 
@@ -54,11 +58,33 @@ ut_links_link (const UtLinks *links, guint index)
   return &g_array_index (links->links, UtLink, index);
 }
 
-/* A cell that is on and serves no live link: in the downlink it sends its lowest power. */
-gboolean ut_links_is_idle (const UtLinks *links, guint cell);
+/* The links of a cell, one after another: k < links->n_served[cell]. */
+static inline guint
+ut_links_served (const UtLinks *links, guint cell, guint k)
+{
+  return links->served[links->first_served[cell] + k];
+}
 
-/* The isolation between two cells' channels as a ratio: 1 on one channel, 0 where it is infinite. */
-double ut_channel_coupling (const UtCarrier *carrier, int one_channel, int other_channel);
+static inline double
+ut_links_coupling (const UtLinks *links, guint one, guint other)
+{
+  return links->coupling[(gsize) one * links->gains->n_cells + other];
+}
+
+/* The unknown that a link's power is, or follows; -1: none. */
+static inline int
+ut_links_unknown (const UtLinks *links, guint index)
+{
+  int cell = ut_links_link (links, index)->cell;
+
+  return links->simultaneous || cell < 0 ? links->link_unknown[index] : links->unknown[cell];
+}
+
+/* Only the links that are kept, in their order. silence: cells that lose their last link are silent instead of idle. */
+UtLinks *ut_links_subset (const UtLinks *links, const gboolean *keep, gboolean silence) G_GNUC_WARN_UNUSED_RESULT;
+
+/* Moves the cells to these channels (one of each cell, from 1). */
+void ut_links_set_channels (UtLinks *links, const int *channels);
 
 /* The largest power of a radio in mW, the plan's EIRP limit counted in. */
 double ut_radio_limit_mw (const UtPlan *plan, const UtRadio *radio);
@@ -85,8 +111,26 @@ gboolean ut_links_least_levels (const UtLinks *links, double factor, UtPowers *p
 /* Every radio at the smaller of its top level (continuous: its limit) and the level it needs, from the bottom up. */
 void ut_links_clipped_levels (const UtLinks *links, UtPowers *powers);
 
-/* The links that set the headroom, the most involved first: terminal indices appended. factor and p (n_unknowns): the headroom's lower end. */
-void ut_links_limiting (const UtLinks *links, const UtSystem *system, double factor, const double *p, GArray *terminals);
+/* The links that set the headroom, the most involved first (terminal indices appended), and who is to blame. factor and p (n_unknowns): the
+ * headroom's lower end.  FALSE where there is no such edge. */
+gboolean ut_links_edge_of_headroom (const UtLinks *links,
+                                    const UtSystem *system,
+                                    double factor,
+                                    const double *p,
+                                    GArray *terminals,
+                                    UtEdgeAnswer *answer);
+
+/* The same for interference alone, whatever the limits. */
+gboolean ut_links_edge_of_interference (const UtLinks *links, const UtSystem *system, GArray *terminals, UtEdgeAnswer *answer);
+
+/* Whether all of these links can be met at once, on the radios' power steps where they have any. */
+gboolean ut_links_can_be_met (const UtLinks *links);
+
+/* Headroom in dB; INFINITY where there are no links, -INFINITY where no common change of the targets helps. */
+double ut_links_headroom_db (const UtLinks *links);
+
+/* The links to leave out, of least total priority.  keep: one flag a link.  FALSE: cancelled. */
+gboolean ut_links_fewest_dropped (const UtLinks *links, GCancellable *cancellable, gboolean *keep, UtDroppingAnswer *answer);
 
 /* The supremum in dB by which this link's target alone can change so that all targets are met, serving cells fixed, limits and minima kept,
  * continuous powers; NAN where no change of it helps. The link must have a cell. */

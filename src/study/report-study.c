@@ -118,6 +118,87 @@ add_terminals (JsonBuilder *builder, const char *key, const UtStudy *study, cons
   json_builder_end_array (builder);
 }
 
+/* A transmitter of the answer's direction. */
+static const char *
+transmitter_id (const UtStudy *study, int index)
+{
+  const UtPlan *plan = study->gains->plan;
+
+  if (index < 0)
+    return NULL;
+  return study->question.direction == UT_DIRECTION_DOWN ? ut_plan_cell (plan, (guint) index)->radio.id
+                                                        : ut_plan_terminal (plan, (guint) index)->radio.id;
+}
+
+static const char *
+terminal_id (const UtStudy *study, guint index)
+{
+  return ut_plan_terminal (study->gains->plan, index)->radio.id;
+}
+
+static void
+add_edge (JsonBuilder *builder, const UtStudy *study)
+{
+  const UtEdgeAnswer *edge = &study->edge;
+
+  json_builder_set_member_name (builder, "edge");
+  if (!edge->known)
+    {
+      json_builder_add_null_value (builder);
+      return;
+    }
+  json_builder_begin_object (builder);
+  add_text (builder, "set_by", edge->by_interference ? "interference" : "limit");
+  add_text (builder, "at_limit", transmitter_id (study, edge->at_limit));
+  add_figure (builder, "noise_part", edge->noise_part);
+  json_builder_set_member_name (builder, "blame");
+  json_builder_begin_array (builder);
+  for (guint i = 0; i < edge->blame->len; i++)
+    {
+      const UtBlame *blame = &g_array_index (edge->blame, UtBlame, i);
+
+      json_builder_begin_object (builder);
+      add_text (builder, "terminal", terminal_id (study, blame->terminal));
+      add_text (builder, "because_of", transmitter_id (study, blame->because_of));
+      add_figure (builder, "part", blame->part);
+      json_builder_end_object (builder);
+    }
+  json_builder_end_array (builder);
+  json_builder_set_member_name (builder, "chain");
+  json_builder_begin_array (builder);
+  for (guint i = 0; i < edge->chain->len; i++)
+    {
+      const UtCause *cause = &g_array_index (edge->chain, UtCause, i);
+
+      json_builder_begin_object (builder);
+      add_text (builder, "transmitter", transmitter_id (study, (int) cause->transmitter));
+      add_text (builder, "terminal", terminal_id (study, cause->terminal));
+      add_text (builder, "because_of", transmitter_id (study, cause->because_of));
+      add_figure (builder, "part", cause->part);
+      json_builder_end_object (builder);
+    }
+  json_builder_end_array (builder);
+  json_builder_end_object (builder);
+}
+
+/* What each noise- or level-limited link lacks, beside limiting_group. */
+static void
+add_lacks (JsonBuilder *builder, const UtStudy *study)
+{
+  json_builder_set_member_name (builder, "limiting_lacks_db");
+  json_builder_begin_array (builder);
+  for (guint i = 0; i < study->lacks_db->len; i++)
+    {
+      double lacks_db = g_array_index (study->lacks_db, double, i);
+
+      if (isfinite (lacks_db))
+        json_builder_add_double_value (builder, lacks_db);
+      else
+        json_builder_add_null_value (builder);
+    }
+  json_builder_end_array (builder);
+}
+
 char *
 ut_report_study_json (const UtStudy *study)
 {
@@ -136,7 +217,16 @@ ut_report_study_json (const UtStudy *study)
   add_transmitters (builder, study);
   add_links (builder, study);
   add_terminals (builder, "limiting_group", study, study->limiting_group);
+  add_lacks (builder, study);
+  add_edge (builder, study);
   add_terminals (builder, "dropped", study, study->dropped);
+  json_builder_set_member_name (builder, "drop_proved");
+  json_builder_add_boolean_value (builder, study->dropping.proved);
+  json_builder_set_member_name (builder, "drop_bounds");
+  json_builder_begin_array (builder);
+  json_builder_add_double_value (builder, study->dropping.at_least);
+  json_builder_add_double_value (builder, study->dropping.total);
+  json_builder_end_array (builder);
   json_builder_set_member_name (builder, "warnings");
   json_builder_begin_array (builder);
   for (guint i = 0; i < study->warnings->len; i++)

@@ -133,6 +133,20 @@ solution_clear (Solution *solution)
   g_free (solution->at_headroom);
 }
 
+/* Who sets the headroom or, where no powers whatever will do, the spectral radius.  Links that fail alone are the limiting group already. */
+static void
+find_edge (UtStudy *study, const UtLinks *links, const Solution *solution)
+{
+  g_autoptr (GArray) terminals = g_array_new (FALSE, FALSE, sizeof (guint));
+
+  if (study->verdict == UT_VERDICT_INTERFERENCE_LIMITED)
+    ut_links_edge_of_interference (links, &solution->system, terminals, &study->edge);
+  else if (solution->has_headroom)
+    ut_links_edge_of_headroom (links, &solution->system, solution->headroom.lower, solution->at_headroom, terminals, &study->edge);
+  if (study->limiting_group->len == 0)
+    g_array_append_vals (study->limiting_group, terminals->data, terminals->len);
+}
+
 /* Verdict, radius and headroom: the plan's own, the same for every aim. */
 static void
 judge (UtStudy *study, const UtLinks *links, Solution *solution)
@@ -163,11 +177,12 @@ judge (UtStudy *study, const UtLinks *links, Solution *solution)
   solution->at_headroom = g_new0 (double, links->n_unknowns);
   if (!level_out_of_reach (links))
     solution->has_headroom = ut_headroom (&solution->system, solution->at_headroom, &solution->headroom) == UT_POWER_OK;
-  if (!solution->has_headroom)
-    return;
-  set_headroom (study, &solution->headroom);
-  if (study->limiting_group->len == 0)
-    ut_links_limiting (links, &solution->system, solution->headroom.lower, solution->at_headroom, study->limiting_group);
+  if (solution->has_headroom)
+    set_headroom (study, &solution->headroom);
+  /* What proves the headroom may be more than the least powers there. */
+  if (solution->has_headroom)
+    ut_least_powers (&solution->system, solution->headroom.lower, UT_LIFT_NOTHING, solution->at_headroom, NULL);
+  find_edge (study, links, solution);
 }
 
 /* Every unknown at its floor: what is shown where nothing better can be computed. */
@@ -224,22 +239,24 @@ static void
 choose_least (UtStudy *study, const UtLinks *links, Solution *solution, UtPowers *powers)
 {
   double hold_db = study->question.hold_db;
+  gboolean dropping = study->question.aim == UT_AIM_FEWEST_DROPPED; /* what is left can be met */
+  double headroom_db = !dropping ? study->headroom_db : solution->has_headroom ? ut_db_from_ratio (solution->headroom.factor) : INFINITY;
 
-  if (study->verdict == UT_VERDICT_STEP_LIMITED)
+  if (study->verdict == UT_VERDICT_STEP_LIMITED && !dropping)
     {
       study->fallback = UT_FALLBACK_CLIPPED_STEPS;
       ut_links_clipped_levels (links, powers);
       return;
     }
-  if (study->verdict != UT_VERDICT_MET)
+  if (study->verdict != UT_VERDICT_MET && !dropping)
     study->fallback = UT_FALLBACK_EQUAL_MARGIN;
-  else if (links->n_unknowns > 0 && hold_db > 0 && hold_db > study->headroom_db)
+  else if (links->n_unknowns > 0 && hold_db > 0 && hold_db > headroom_db)
     {
       study->fallback = UT_FALLBACK_EQUAL_MARGIN;
       warn (study,
             "%.3g dB cannot be kept in hand: the headroom is %.3g dB; every target is raised by the headroom instead",
             hold_db,
-            study->headroom_db);
+            headroom_db);
     }
   else if (!least_held (links, solution, hold_db, powers))
     {
@@ -298,10 +315,26 @@ name_interferers (const UtLinks *links, const UtPowers *powers, guint index, GAr
   return sum_mw;
 }
 
+/* What a link has at these powers. */
 static void
-answer_link (UtStudy *study, const UtLinks *links, const UtPowers *powers, guint index)
+fill_figures (const UtLinks *links, const UtPowers *powers, guint index, UtLinkAnswer *answer)
 {
   const UtLink *link = ut_links_link (links, index);
+  double interference_mw = name_interferers (links, powers, index, answer->interferers);
+  double signal_mw = powers->link_mw[index] * link->gain;
+
+  answer->power_dbm = dbm_or_nan (powers->link_mw[index]);
+  answer->signal_dbm = dbm_or_nan (signal_mw);
+  answer->noise_dbm = ut_dbm_from_mw (link->noise_mw);
+  answer->interference_dbm = dbm_or_nan (interference_mw);
+  answer->sinr_db = dbm_or_nan (links->processing_gain * signal_mw / (interference_mw + link->noise_mw));
+  answer->margin_db = answer->sinr_db - answer->target_db;
+}
+
+/* kept: the links that are not dropped, in the same order; index: the place among them, used where the link is kept and has a cell. */
+static void
+answer_link (UtStudy *study, const UtLink *link, gboolean dropped, const UtLinks *kept, const UtPowers *powers, guint index)
+{
   UtLinkAnswer answer = {
     .terminal = link->terminal,
     .cell = link->cell,
@@ -314,21 +347,12 @@ answer_link (UtStudy *study, const UtLinks *links, const UtPowers *powers, guint
     .noise_dbm = NAN,
     .interference_dbm = NAN,
     .reserve_db = NAN,
+    .dropped = dropped,
     .interferers = g_array_new (FALSE, FALSE, sizeof (UtInterferer)),
   };
 
-  if (link->cell >= 0)
-    {
-      double interference_mw = name_interferers (links, powers, index, answer.interferers);
-      double signal_mw = powers->link_mw[index] * link->gain;
-
-      answer.power_dbm = dbm_or_nan (powers->link_mw[index]);
-      answer.signal_dbm = dbm_or_nan (signal_mw);
-      answer.noise_dbm = ut_dbm_from_mw (link->noise_mw);
-      answer.interference_dbm = dbm_or_nan (interference_mw);
-      answer.sinr_db = dbm_or_nan (links->processing_gain * signal_mw / (interference_mw + link->noise_mw));
-      answer.margin_db = answer.sinr_db - answer.target_db;
-    }
+  if (!dropped && link->cell >= 0)
+    fill_figures (kept, powers, index, &answer);
   g_array_append_val (study->links, answer);
 }
 
@@ -359,13 +383,13 @@ answer_transmitters (UtStudy *study, const UtLinks *links, const UtPowers *power
 
   if (links->direction == UT_DIRECTION_UP)
     {
-      for (guint i = 0; i < links->links->len; i++)
-        add_transmitter (study, FALSE, ut_links_link (links, i)->terminal, FALSE, powers->link_mw[i]);
+      for (guint i = 0; i < study->links->len; i++)
+        add_transmitter (study, FALSE, ut_study_link (study, i)->terminal, FALSE, ut_mw_from_dbm (ut_study_link (study, i)->power_dbm));
       return;
     }
   for (guint c = 0; c < plan->cells->len; c++)
     if (ut_plan_cell (plan, c)->radio.on)
-      add_transmitter (study, TRUE, c, ut_links_is_idle (links, c), powers->cell_mw[c]);
+      add_transmitter (study, TRUE, c, links->idle[c], powers->cell_mw[c]);
 }
 
 /* Radios above the EIRP limit: possible with powers as set, and for idle cells. */
@@ -453,43 +477,93 @@ study_alloc (const UtPlan *plan, const UtQuestion *question, const UtStudy *prev
   g_array_set_clear_func (study->links, clear_link_answer);
   study->limiting_group = g_array_new (FALSE, FALSE, sizeof (guint));
   study->lacks_db = g_array_new (FALSE, FALSE, sizeof (double));
+  study->edge = (UtEdgeAnswer){
+    .blame = g_array_new (FALSE, FALSE, sizeof (UtBlame)),
+    .chain = g_array_new (FALSE, FALSE, sizeof (UtCause)),
+    .at_limit = -1,
+  };
   study->dropped = g_array_new (FALSE, FALSE, sizeof (guint));
   study->warnings = g_ptr_array_new_with_free_func (g_free);
   return study;
 }
 
-/* The reserve of every link; none has any where a link has no cell or a level cannot be reached: then no change of one target heals the plan. */
+/* The reserve of every link that is kept; none has any where a link has no cell or a level cannot be reached: then no change of one target heals
+ * the plan. */
 static void
-answer_reserves (UtStudy *study, const UtLinks *links, GCancellable *cancellable)
+answer_reserves (UtStudy *study, const UtLinks *kept, GCancellable *cancellable)
 {
-  for (guint i = 0; i < links->links->len; i++)
-    if (ut_links_link (links, i)->cell < 0)
+  guint index = 0;
+
+  for (guint i = 0; i < kept->links->len; i++)
+    if (ut_links_link (kept, i)->cell < 0)
       return;
-  if (level_out_of_reach (links))
+  if (level_out_of_reach (kept))
     return;
-  for (guint i = 0; i < links->links->len && !g_cancellable_is_cancelled (cancellable); i++)
-    g_array_index (study->links, UtLinkAnswer, i).reserve_db = ut_links_reserve_db (links, i);
+  for (guint i = 0; i < study->links->len && !g_cancellable_is_cancelled (cancellable); i++)
+    if (!ut_study_link (study, i)->dropped)
+      g_array_index (study->links, UtLinkAnswer, i).reserve_db = ut_links_reserve_db (kept, index++);
+}
+
+/* Headroom of the links that are left, as far as choosing their powers needs it. */
+static void
+solve_kept (const UtLinks *kept, Solution *solution)
+{
+  UtPowerStatus status = ut_links_system (kept, FALSE, &solution->system);
+
+  g_assert (status == UT_POWER_OK); /* a part of a valid plan */
+  solution->at_headroom = g_new0 (double, MAX (kept->n_unknowns, 1));
+  solution->has_headroom = kept->n_unknowns > 0 && ut_headroom (&solution->system, solution->at_headroom, &solution->headroom) == UT_POWER_OK;
+}
+
+/* Leaves out what must be left out: the links that stay, and what is known of their system in place of the plan's.  NULL: cancelled. */
+static UtLinks *
+drop_links (UtStudy *study, const UtLinks *links, gboolean *keep, Solution *solution, GCancellable *cancellable)
+{
+  UtLinks *kept;
+
+  if (!ut_links_fewest_dropped (links, cancellable, keep, &study->dropping))
+    return NULL;
+  for (guint i = 0; i < links->links->len; i++)
+    if (!keep[i])
+      g_array_append_val (study->dropped, ut_links_link (links, i)->terminal);
+  kept = ut_links_subset (links, keep, FALSE);
+  solution_clear (solution);
+  solve_kept (kept, solution);
+  return kept;
 }
 
 static void
 answer (UtStudy *study, GCancellable *cancellable)
 {
   g_autoptr (UtLinks) links = ut_links_new (study->gains, study->question.direction);
-  UtPowers powers = ut_powers_new (links);
+  g_autoptr (UtLinks) rest = NULL;
+  g_autofree gboolean *keep = g_new (gboolean, MAX (links->links->len, 1));
+  const UtLinks *kept = links;
   Solution solution = { 0 };
+  guint index = 0;
 
-  judge (study, links, &solution);
-  choose_powers (study, links, &solution, &powers);
   for (guint i = 0; i < links->links->len; i++)
-    answer_link (study, links, &powers, i);
-  if (study->question.reserves)
-    answer_reserves (study, links, cancellable);
-  answer_transmitters (study, links, &powers);
-  warn_of_plan (study);
-  warn_of_eirp (study);
-  warn_of_shared_cells (study, links);
+    keep[i] = TRUE;
+  judge (study, links, &solution);
+  study->dropping.proved = TRUE;
+  if (study->question.aim == UT_AIM_FEWEST_DROPPED && study->verdict != UT_VERDICT_MET)
+    kept = rest = drop_links (study, links, keep, &solution, cancellable);
+  if (kept != NULL)
+    {
+      UtPowers powers = ut_powers_new (kept);
+
+      choose_powers (study, kept, &solution, &powers);
+      for (guint i = 0; i < links->links->len; i++)
+        answer_link (study, ut_links_link (links, i), !keep[i], kept, &powers, keep[i] ? index++ : 0);
+      if (study->question.reserves)
+        answer_reserves (study, kept, cancellable);
+      answer_transmitters (study, kept, &powers);
+      warn_of_plan (study);
+      warn_of_eirp (study);
+      warn_of_shared_cells (study, kept);
+      ut_powers_clear (&powers);
+    }
   solution_clear (&solution);
-  ut_powers_clear (&powers);
 }
 
 UtStudy *
@@ -526,6 +600,8 @@ study_clear (gpointer data)
   g_array_unref (study->links);
   g_array_unref (study->limiting_group);
   g_array_unref (study->lacks_db);
+  g_array_unref (study->edge.blame);
+  g_array_unref (study->edge.chain);
   g_array_unref (study->dropped);
   g_ptr_array_unref (study->warnings);
 }

@@ -63,6 +63,41 @@ typedef struct
   double power_dbm, power_min_dbm, power_max_dbm, eirp_dbm;
 } UtTransmitterAnswer;
 
+/* Of what sets the headroom, the part that one transmitter has at one link: 1 dB less on that path moves it by about `part` dB. */
+typedef struct
+{
+  guint terminal;
+  int because_of; /* cell (downlink) or terminal (uplink), by its index in the plan */
+  double part;
+} UtBlame;
+
+/* A step from a radio at its limit to who drives it there. */
+typedef struct
+{
+  guint transmitter; /* cell (downlink) or terminal (uplink) */
+  guint terminal;    /* the link for which it must send so much */
+  int because_of;    /* who makes it so, mostly; -1: noise */
+  double part;       /* of all that the link's receiver hears besides its signal */
+} UtCause;
+
+/* What sets the headroom; where the verdict is interference-limited, what sets the spectral radius. */
+typedef struct
+{
+  gboolean known;
+  gboolean by_interference;
+  double noise_part; /* of noise and idle cells; with all blame, named here or too small, it adds up to 1 */
+  GArray *blame;     /* of UtBlame, the largest first */
+  int at_limit;      /* the transmitter whose limit is full, by its index; -1: none */
+  GArray *chain;     /* of UtCause, from that transmitter on */
+} UtEdgeAnswer;
+
+/* With the aim fewest-dropped: the priority of what is left out. */
+typedef struct
+{
+  gboolean proved;
+  double at_least, total; /* proved: the same */
+} UtDroppingAnswer;
+
 typedef struct
 {
   UtQuestion question;
@@ -76,7 +111,9 @@ typedef struct
   GArray *links;           /* of UtLinkAnswer, in file order */
   GArray *limiting_group;  /* of guint: terminal indices; those without a cell first */
   GArray *lacks_db;        /* of double, beside limiting_group when noise- or level-limited: what the link lacks; NAN: no cell */
+  UtEdgeAnswer edge;
   GArray *dropped;         /* of guint: terminal indices */
+  UtDroppingAnswer dropping;
   GPtrArray *warnings;     /* of char * */
 } UtStudy;
 
