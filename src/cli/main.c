@@ -173,7 +173,7 @@ static UtExit
 run (char **words, const Texts *texts)
 {
   const Verb *verb = words[0] != NULL ? find_verb (words[0]) : NULL;
-  UtOrder order = { .question = { .reserves = TRUE } };
+  UtOrder order = { .question = { .reserves = TRUE, .remedies = TRUE } };
 
   if (words[0] == NULL)
     {

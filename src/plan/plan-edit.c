@@ -265,6 +265,31 @@ ut_plan_with_construction (const UtPlan *plan, int index, UtConstruction *constr
 }
 
 const UtPlan *
+ut_plan_with_measured_gain (const UtPlan *plan,
+                            const char *terminal,
+                            const char *cell,
+                            double gain_db)
+{
+  UtPlan *next = begin (plan);
+  UtMeasuredGain *gain = ut_measured_gain_new ();
+  int index = -1;
+  gain->terminal = g_strdup (terminal);
+  gain->cell = g_strdup (cell);
+  gain->gain_db = gain_db;
+  for (guint i = 0; i < plan->measured_gains->len; i++)
+    {
+      const UtMeasuredGain *old = plan->measured_gains->pdata[i];
+      if (g_str_equal (old->terminal, terminal) && g_str_equal (old->cell, cell))
+        index = (int)i;
+    }
+  set_item (own_list (&next->measured_gains, &ut_kind_measured_gain),
+            &ut_kind_measured_gain,
+            index,
+            gain);
+  return next;
+}
+
+const UtPlan *
 ut_plan_without_cell (const UtPlan *plan, int index)
 {
   UtPlan *next = begin (plan);

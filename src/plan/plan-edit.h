@@ -11,6 +11,11 @@ const UtPlan *ut_plan_with_propagation (const UtPlan *plan, UtPropagation *propa
 const UtPlan *ut_plan_with_cell (const UtPlan *plan, int index, UtCell *cell); /* -1: append */
 const UtPlan *
 ut_plan_with_terminal (const UtPlan *plan, int index, UtTerminal *terminal); /* -1: append */
+/* Sets the measured gain of a pair, by their ids; it must exist. */
+const UtPlan *ut_plan_with_measured_gain (const UtPlan *plan,
+                                          const char *terminal,
+                                          const char *cell,
+                                          double gain_db);
 const UtPlan *
 ut_plan_with_storey (const UtPlan *plan, int index, UtStorey *storey); /* -1: append */
 const UtPlan *ut_plan_with_construction (const UtPlan *plan,

@@ -4,6 +4,7 @@
 #include "decibel.h"
 #include "least.h"
 #include "links.h"
+#include "reserve.h"
 
 #define MOST_ROUNDS 200
 
@@ -108,8 +109,8 @@ largest_kept (Question *question, double low_mw, double low_full, double high_mw
 
 /* A link's SINR rises with its sender's power, whatever the others have to do about it: the more power, the smaller the part of the
  * interference that does not follow it. So the largest target goes with the largest power that all limits allow. */
-double
-ut_links_reserve_db (const UtLinks *links, guint index)
+static double
+reserve_by_search (const UtLinks *links, guint index)
 {
   const UtLink *link = ut_links_link (links, index);
   Question question = { .trial = *links, .index = index, .powers = ut_powers_new (links) };
@@ -131,4 +132,39 @@ ut_links_reserve_db (const UtLinks *links, guint index)
   ut_powers_clear (&question.powers);
   g_array_unref (question.trial.links);
   return isfinite (reserve_db) ? reserve_db : NAN;
+}
+
+/* With an unknown a link one inverse answers nearly all. */
+static void
+reserves_at_once (const UtLinks *links, double *factor, UtReserveStatus *status)
+{
+  UtSystem system;
+
+  if (links->simultaneous && ut_links_system (links, FALSE, &system) == UT_POWER_OK)
+    {
+      UtPowerStatus outcome = system.minimum_above_limit ? UT_POWER_INVALID : ut_reserves (&system, factor, status);
+
+      for (guint i = 0; i < links->n_unknowns && outcome != UT_POWER_OK; i++)
+        status[i] = UT_RESERVE_UNSETTLED;
+    }
+  if (links->simultaneous)
+    ut_system_clear (&system);
+}
+
+void
+ut_links_reserves_db (const UtLinks *links, GCancellable *cancellable, double *reserve_db)
+{
+  g_autofree double *factor = g_new0 (double, MAX (links->n_unknowns, 1));
+  g_autofree UtReserveStatus *status = g_new0 (UtReserveStatus, MAX (links->n_unknowns, 1));
+
+  reserves_at_once (links, factor, status);
+  for (guint i = 0; i < links->links->len && !g_cancellable_is_cancelled (cancellable); i++)
+    {
+      int unknown = links->simultaneous ? links->link_unknown[i] : -1;
+
+      if (unknown < 0 || status[unknown] == UT_RESERVE_UNSETTLED)
+        reserve_db[i] = reserve_by_search (links, i);
+      else
+        reserve_db[i] = status[unknown] == UT_RESERVE_FOUND ? ut_db_from_ratio (factor[unknown]) : NAN;
+    }
 }

@@ -132,9 +132,9 @@ double ut_links_headroom_db (const UtLinks *links);
 /* The links to leave out, of least total priority.  keep: one flag a link.  FALSE: cancelled. */
 gboolean ut_links_fewest_dropped (const UtLinks *links, GCancellable *cancellable, gboolean *keep, UtDroppingAnswer *answer);
 
-/* The supremum in dB by which this link's target alone can change so that all targets are met, serving cells fixed, limits and minima kept,
- * continuous powers; NAN where no change of it helps. The link must have a cell. */
-double ut_links_reserve_db (const UtLinks *links, guint index);
+/* The supremum in dB by which each link's target alone can change so that all targets are met, serving cells fixed, limits and minima kept,
+ * continuous powers; NAN where no change of it helps. Every link must have a cell.  reserve_db: one of each link; unset once cancelled. */
+void ut_links_reserves_db (const UtLinks *links, GCancellable *cancellable, double *reserve_db);
 
 /* Who disturbs link `index` at these powers: appended to `interference` (of UtInterference), strongest first, nothing that is 0. */
 void ut_links_interference (const UtLinks *links, const UtPowers *powers, guint index, GArray *interference);

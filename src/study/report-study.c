@@ -1,5 +1,5 @@
 /* The answer of `solve` as JSON, text and CSV. */
-#include "report.h"
+#include "report-private.h"
 
 #include <math.h>
 
@@ -7,26 +7,6 @@
 #include "plan-write.h"
 #include "table.h"
 #include "words.h"
-
-static void
-add_figure (JsonBuilder *builder, const char *key, double value)
-{
-  json_builder_set_member_name (builder, key);
-  if (isfinite (value))
-    json_builder_add_double_value (builder, value);
-  else
-    json_builder_add_null_value (builder);
-}
-
-static void
-add_text (JsonBuilder *builder, const char *key, const char *text)
-{
-  json_builder_set_member_name (builder, key);
-  if (text != NULL)
-    json_builder_add_string_value (builder, text);
-  else
-    json_builder_add_null_value (builder);
-}
 
 static const char *
 cell_id (const UtStudy *study, int cell)
@@ -51,11 +31,11 @@ add_transmitters (JsonBuilder *builder, const UtStudy *study)
       const UtTransmitterAnswer *sender = ut_study_transmitter (study, i);
 
       json_builder_begin_object (builder);
-      add_text (builder, "id", transmitter_radio (study, sender)->id);
-      add_figure (builder, "power_dbm", sender->power_dbm);
-      add_figure (builder, "power_min_dbm", sender->power_min_dbm);
-      add_figure (builder, "power_max_dbm", sender->power_max_dbm);
-      add_figure (builder, "eirp_dbm", sender->eirp_dbm);
+      ut_report_add_text (builder, "id", transmitter_radio (study, sender)->id);
+      ut_report_add_figure (builder, "power_dbm", sender->power_dbm);
+      ut_report_add_figure (builder, "power_min_dbm", sender->power_min_dbm);
+      ut_report_add_figure (builder, "power_max_dbm", sender->power_max_dbm);
+      ut_report_add_figure (builder, "eirp_dbm", sender->eirp_dbm);
       json_builder_end_object (builder);
     }
   json_builder_end_array (builder);
@@ -71,8 +51,8 @@ add_interferers (JsonBuilder *builder, const UtLinkAnswer *link)
       const UtInterferer *one = &g_array_index (link->interferers, UtInterferer, i);
 
       json_builder_begin_object (builder);
-      add_text (builder, "id", one->id);
-      add_figure (builder, "dbm", one->dbm);
+      ut_report_add_text (builder, "id", one->id);
+      ut_report_add_figure (builder, "dbm", one->dbm);
       json_builder_end_object (builder);
     }
   json_builder_end_array (builder);
@@ -88,18 +68,18 @@ add_links (JsonBuilder *builder, const UtStudy *study)
       const UtLinkAnswer *link = ut_study_link (study, i);
 
       json_builder_begin_object (builder);
-      add_text (builder, "terminal", ut_plan_terminal (study->gains->plan, link->terminal)->radio.id);
-      add_text (builder, "cell", cell_id (study, link->cell));
-      add_figure (builder, "power_dbm", link->power_dbm);
-      add_figure (builder, "target_db", link->target_db);
-      add_figure (builder, "level_target_dbm", link->level_target_dbm);
-      add_figure (builder, "sinr_db", link->sinr_db);
-      add_figure (builder, "margin_db", link->margin_db);
-      add_figure (builder, "signal_dbm", link->signal_dbm);
-      add_figure (builder, "noise_dbm", link->noise_dbm);
-      add_figure (builder, "interference_dbm", link->interference_dbm);
+      ut_report_add_text (builder, "terminal", ut_plan_terminal (study->gains->plan, link->terminal)->radio.id);
+      ut_report_add_text (builder, "cell", cell_id (study, link->cell));
+      ut_report_add_figure (builder, "power_dbm", link->power_dbm);
+      ut_report_add_figure (builder, "target_db", link->target_db);
+      ut_report_add_figure (builder, "level_target_dbm", link->level_target_dbm);
+      ut_report_add_figure (builder, "sinr_db", link->sinr_db);
+      ut_report_add_figure (builder, "margin_db", link->margin_db);
+      ut_report_add_figure (builder, "signal_dbm", link->signal_dbm);
+      ut_report_add_figure (builder, "noise_dbm", link->noise_dbm);
+      ut_report_add_figure (builder, "interference_dbm", link->interference_dbm);
       add_interferers (builder, link);
-      add_figure (builder, "reserve_db", link->reserve_db);
+      ut_report_add_figure (builder, "reserve_db", link->reserve_db);
       json_builder_set_member_name (builder, "dropped");
       json_builder_add_boolean_value (builder, link->dropped);
       json_builder_end_object (builder);
@@ -118,108 +98,27 @@ add_terminals (JsonBuilder *builder, const char *key, const UtStudy *study, cons
   json_builder_end_array (builder);
 }
 
-/* A transmitter of the answer's direction. */
-static const char *
-transmitter_id (const UtStudy *study, int index)
-{
-  const UtPlan *plan = study->gains->plan;
-
-  if (index < 0)
-    return NULL;
-  return study->question.direction == UT_DIRECTION_DOWN ? ut_plan_cell (plan, (guint) index)->radio.id
-                                                        : ut_plan_terminal (plan, (guint) index)->radio.id;
-}
-
-static const char *
-terminal_id (const UtStudy *study, guint index)
-{
-  return ut_plan_terminal (study->gains->plan, index)->radio.id;
-}
-
-static void
-add_edge (JsonBuilder *builder, const UtStudy *study)
-{
-  const UtEdgeAnswer *edge = &study->edge;
-
-  json_builder_set_member_name (builder, "edge");
-  if (!edge->known)
-    {
-      json_builder_add_null_value (builder);
-      return;
-    }
-  json_builder_begin_object (builder);
-  add_text (builder, "set_by", edge->by_interference ? "interference" : "limit");
-  add_text (builder, "at_limit", transmitter_id (study, edge->at_limit));
-  add_figure (builder, "noise_part", edge->noise_part);
-  json_builder_set_member_name (builder, "blame");
-  json_builder_begin_array (builder);
-  for (guint i = 0; i < edge->blame->len; i++)
-    {
-      const UtBlame *blame = &g_array_index (edge->blame, UtBlame, i);
-
-      json_builder_begin_object (builder);
-      add_text (builder, "terminal", terminal_id (study, blame->terminal));
-      add_text (builder, "because_of", transmitter_id (study, blame->because_of));
-      add_figure (builder, "part", blame->part);
-      json_builder_end_object (builder);
-    }
-  json_builder_end_array (builder);
-  json_builder_set_member_name (builder, "chain");
-  json_builder_begin_array (builder);
-  for (guint i = 0; i < edge->chain->len; i++)
-    {
-      const UtCause *cause = &g_array_index (edge->chain, UtCause, i);
-
-      json_builder_begin_object (builder);
-      add_text (builder, "transmitter", transmitter_id (study, (int) cause->transmitter));
-      add_text (builder, "terminal", terminal_id (study, cause->terminal));
-      add_text (builder, "because_of", transmitter_id (study, cause->because_of));
-      add_figure (builder, "part", cause->part);
-      json_builder_end_object (builder);
-    }
-  json_builder_end_array (builder);
-  json_builder_end_object (builder);
-}
-
-/* What each noise- or level-limited link lacks, beside limiting_group. */
-static void
-add_lacks (JsonBuilder *builder, const UtStudy *study)
-{
-  json_builder_set_member_name (builder, "limiting_lacks_db");
-  json_builder_begin_array (builder);
-  for (guint i = 0; i < study->lacks_db->len; i++)
-    {
-      double lacks_db = g_array_index (study->lacks_db, double, i);
-
-      if (isfinite (lacks_db))
-        json_builder_add_double_value (builder, lacks_db);
-      else
-        json_builder_add_null_value (builder);
-    }
-  json_builder_end_array (builder);
-}
-
 char *
 ut_report_study_json (const UtStudy *study)
 {
   g_autoptr (JsonBuilder) builder = json_builder_new_immutable ();
 
   json_builder_begin_object (builder);
-  add_text (builder, "title", study->gains->plan->title);
-  add_text (builder, "direction", ut_direction_word (study->question.direction));
-  add_text (builder, "aim", ut_aim_word (study->question.aim));
-  add_text (builder, "fallback", ut_fallback_word (study->fallback));
-  add_text (builder, "verdict", ut_verdict_word (study->verdict));
-  add_figure (builder, "spectral_radius", study->spectral_radius);
-  add_figure (builder, "headroom_db", study->headroom_db);
-  add_figure (builder, "headroom_error_db", study->headroom_error_db);
-  add_figure (builder, "hold_db", study->question.hold_db);
+  ut_report_add_text (builder, "title", study->gains->plan->title);
+  ut_report_add_text (builder, "direction", ut_direction_word (study->question.direction));
+  ut_report_add_text (builder, "aim", ut_aim_word (study->question.aim));
+  ut_report_add_text (builder, "fallback", ut_fallback_word (study->fallback));
+  ut_report_add_text (builder, "verdict", ut_verdict_word (study->verdict));
+  ut_report_add_figure (builder, "spectral_radius", study->spectral_radius);
+  ut_report_add_figure (builder, "headroom_db", study->headroom_db);
+  ut_report_add_figure (builder, "headroom_error_db", study->headroom_error_db);
+  ut_report_add_figure (builder, "hold_db", study->question.hold_db);
   add_transmitters (builder, study);
   add_links (builder, study);
   add_terminals (builder, "limiting_group", study, study->limiting_group);
-  add_lacks (builder, study);
-  add_edge (builder, study);
+  ut_report_add_edge (builder, study);
   add_terminals (builder, "dropped", study, study->dropped);
+  ut_report_add_remedies (builder, study);
   json_builder_set_member_name (builder, "drop_proved");
   json_builder_add_boolean_value (builder, study->dropping.proved);
   json_builder_set_member_name (builder, "drop_bounds");
@@ -354,5 +253,6 @@ ut_report_study_text (const UtStudy *study)
   append_transmitters (study, out);
   g_string_append_c (out, '\n');
   append_links (study, out);
+  ut_report_append_edge (study, out);
   return g_string_free (out, FALSE);
 }

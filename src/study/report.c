@@ -139,6 +139,7 @@ ut_report_verdict_sentence (const UtStudy *study)
   g_autofree char *heals = isnan (study->headroom_db)
                              ? g_strdup ("No common change of the targets heals that.")
                              : g_strdup_printf ("Lowering every target by %s dB would heal it.", lower);
+  g_autofree char *group = name_terminals (study, study->limiting_group);
   guint n = study->links->len;
 
   if (n == 0)
@@ -151,7 +152,10 @@ ut_report_verdict_sentence (const UtStudy *study)
     case UT_VERDICT_LEVEL_LIMITED:
       return alone_sentence (study);
     case UT_VERDICT_INTERFERENCE_LIMITED:
-      return g_strdup_printf ("No powers whatever can meet all %u targets: the links hold each other back. %s", n, heals);
+      return g_strdup_printf ("No powers whatever can meet all %u targets: %s hold each other back. %s",
+                              n,
+                              study->limiting_group->len > 1 ? group : "the links",
+                              heals);
     case UT_VERDICT_POWER_LIMITED:
       return g_strdup_printf ("The %u targets need more power than the limits allow. %s", n, heals);
     case UT_VERDICT_MINIMUM_LIMITED:

@@ -10,6 +10,7 @@
 #include "perron.h"
 #include "plan-check.h"
 #include "plan-read.h"
+#include "remedies.h"
 #include "verdict.h"
 
 static void
@@ -492,6 +493,8 @@ study_alloc (const UtPlan *plan, const UtQuestion *question, const UtStudy *prev
 static void
 answer_reserves (UtStudy *study, const UtLinks *kept, GCancellable *cancellable)
 {
+  g_autofree double *reserve_db = g_new0 (double, MAX (kept->links->len, 1));
+  gboolean met = study->verdict == UT_VERDICT_MET || study->dropped->len > 0;
   guint index = 0;
 
   for (guint i = 0; i < kept->links->len; i++)
@@ -499,9 +502,16 @@ answer_reserves (UtStudy *study, const UtLinks *kept, GCancellable *cancellable)
       return;
   if (level_out_of_reach (kept))
     return;
+  ut_links_reserves_db (kept, cancellable, reserve_db);
   for (guint i = 0; i < study->links->len && !g_cancellable_is_cancelled (cancellable); i++)
     if (!ut_study_link (study, i)->dropped)
-      g_array_index (study->links, UtLinkAnswer, i).reserve_db = ut_links_reserve_db (kept, index++);
+      {
+        /* Limits count as kept up to a slack; at the very edge it must not show as a lack. */
+        double shown_db = met && reserve_db[index] < 0 && reserve_db[index] > UT_MARGIN_MET_DB ? 0 : reserve_db[index];
+
+        g_array_index (study->links, UtLinkAnswer, i).reserve_db = shown_db;
+        index++;
+      }
 }
 
 /* Headroom of the links that are left, as far as choosing their powers needs it. */
@@ -573,6 +583,8 @@ ut_study_new_cancellable (const UtPlan *plan, const UtQuestion *question, const 
 
   if (!g_cancellable_is_cancelled (cancellable))
     answer (study, cancellable);
+  if (question->remedies && !g_cancellable_is_cancelled (cancellable))
+    study->remedies = ut_remedies_new (study, cancellable);
   if (g_cancellable_is_cancelled (cancellable))
     g_clear_pointer (&study, ut_study_unref);
   return study;
@@ -604,6 +616,7 @@ study_clear (gpointer data)
   g_array_unref (study->edge.chain);
   g_array_unref (study->dropped);
   g_ptr_array_unref (study->warnings);
+  g_clear_pointer (&study->remedies, g_ptr_array_unref);
 }
 
 void

@@ -29,6 +29,7 @@ typedef struct
   UtAim aim;
   double hold_db;    /* >= 0: kept in hand on every target when powers are chosen */
   gboolean reserves; /* compute the reserve of every link */
+  gboolean remedies; /* look for what would heal a plan that cannot be met */
 } UtQuestion;
 
 /* A link is marked met from here up. */
@@ -114,6 +115,7 @@ typedef struct
   UtEdgeAnswer edge;
   GArray *dropped;         /* of guint: terminal indices */
   UtDroppingAnswer dropping;
+  GPtrArray *remedies;     /* of UtRemedy, see remedies.h; NULL: not asked for */
   GPtrArray *warnings;     /* of char * */
 } UtStudy;
 

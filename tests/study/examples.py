@@ -102,6 +102,13 @@ for plan, name, direction, verdict, radius, headroom_db in (
 tap.check("clinic, two channels, downlink: every cell at its lowest",
           [fault for cell, dbm in powers(solve(program, two)).items() for fault in near(cell, dbm, -10, 1e-9)])
 
+for direction, total, dropped in (("down", 3, {"T4", "T12"}), ("up", 1, set())):
+    answer = solve(program, one, "--direction", direction, "--aim", "fewest-dropped")
+    rest = set(answer["dropped"]) - dropped
+    tap.check(f"clinic, one channel, {direction}: fewest dropped",
+              same("bounds", answer["drop_bounds"], [total, total]) + same("proved", answer["drop_proved"], True) + same("these", set(answer["dropped"]) >= dropped, True)
+              + same("and one of", len(rest) == 1 and rest <= ({"T3", "T5", "T6"} if direction == "down" else {"T3", "T4"}), True))
+
 # Farm: near and far, all at once.
 farm = example("farm")
 for by_db in (0, 10, 20, 30):
@@ -131,6 +138,9 @@ for pad_db, headroom_db in ((3, 0.48), (6, 1.36), (10, 1.58)):
     answer = solve(program, changed(loud, pad), "--direction", "up")
     tap.check(f"farm with loud radios, {pad_db} dB pads on T1 and T4: met",
               same("verdict", answer["verdict"], "met") + near("headroom", answer["headroom_db"], headroom_db, 6e-3))
+
+pads = [(r["transmitters"][0]["id"], r["by_db"]) for r in solve(program, loud, "--direction", "up")["remedies"] if r["kind"] == "pads"]
+tap.check("farm with loud radios: attenuators are among the remedies", same("pads", pads, [("T1", 6), ("T4", 6)]))
 
 # The smallest plan, used throughout the docs.
 rooms = example("two-rooms")
