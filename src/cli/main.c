@@ -12,8 +12,12 @@ typedef enum
 {
   TAKES_FORMAT = 1 << 0,
   TAKES_CSV = 1 << 1,
-  TAKES_QUESTION = 1 << 2,
-  TAKES_PAGE = 1 << 3,
+  TAKES_DIRECTION = 1 << 2,
+  TAKES_AIM = 1 << 3,
+  TAKES_OUTPUT = 1 << 4,
+  TAKES_PAPER = 1 << 5,
+  TAKES_SEED = 1 << 6,
+  TAKES_LOOP = 1 << 7,
 } Takes;
 
 typedef struct
@@ -30,20 +34,32 @@ static const Verb verbs[] = {
   { "check", "PLAN", 1, 0, ut_verb_check, "read and validate a plan" },
   { "gains", "PLAN", 1, TAKES_FORMAT | TAKES_CSV, ut_verb_gains, "the gain matrix in dB, a row a terminal, a column a cell" },
   { "path", "PLAN CELL TERMINAL", 3, TAKES_FORMAT, ut_verb_path, "how one gain comes about" },
-  { "solve", "PLAN", 1, TAKES_FORMAT | TAKES_CSV | TAKES_QUESTION, ut_verb_solve, "verdict, headroom, powers and links" },
-  { "page", "PLAN --output FILE", 1, TAKES_QUESTION | TAKES_PAGE, ut_verb_page, "the one page as .pdf, .svg or .png" },
+  { "solve", "PLAN", 1, TAKES_FORMAT | TAKES_CSV | TAKES_DIRECTION | TAKES_AIM, ut_verb_solve, "verdict, headroom, powers, links, remedies" },
+  { "channels", "PLAN", 1, TAKES_FORMAT | TAKES_DIRECTION | TAKES_SEED | TAKES_OUTPUT, ut_verb_channels, "the cells' channels with the largest headroom" },
+  { "control", "PLAN", 1, TAKES_FORMAT | TAKES_CSV | TAKES_DIRECTION | TAKES_SEED | TAKES_LOOP, ut_verb_control,
+    "the radios finding their powers by themselves" },
+  { "page", "PLAN --output FILE", 1, TAKES_DIRECTION | TAKES_AIM | TAKES_OUTPUT | TAKES_PAPER, ut_verb_page, "the one page as .pdf, .svg or .png" },
 };
+
+static const char verb_names[] = "check, gains, path, solve, channels, control or page";
 
 static const char options_help[] =
   "Options\n"
-  "  --format text|json|csv      how to print (gains, solve; path: text or json)\n"
-  "  --direction down|up         which end transmits (solve, page; default down)\n"
+  "  --format text|json|csv      how to print (csv: gains, solve, control)\n"
+  "  --direction down|up         which end transmits (solve, channels, control, page; default down)\n"
   "  --aim least-power|equal-margin|fewest-dropped|as-set\n"
   "                              how powers are chosen (solve, page; default least-power)\n"
   "  --hold DB                   dB kept in hand on every target when powers are chosen (solve, page; default 0)\n"
-  "  --output FILE               where the page goes\n"
+  "  --output FILE               where the page goes; channels: where the plan with the channels found goes\n"
   "  --paper a4|a3|letter|tabloid, --orientation portrait|landscape\n"
   "                              the sheet (page; default a4, landscape)\n"
+  "  --seed N                    of what is random (channels: starts; control: measurement errors; default 1)\n"
+  "  --rule exact|steps          control: straight to the power needed, or up and down by a step (default exact)\n"
+  "  --step DB                   control: that step (default 1)\n"
+  "  --delay N                   control: rounds by which what a radio sees is old (default 0)\n"
+  "  --error DB                  control: what a radio measures is off by up to so much (default 0)\n"
+  "  --start set|least|most      control: powers to start from (default set)\n"
+  "  --rounds N                  control: how many (default 30)\n"
   "  --help, --version\n"
   "\n"
   "PLAN may be -, standard input.\n"
@@ -64,38 +80,84 @@ print_help (void)
   printf ("\n%s", options_help);
 }
 
-/* Texts of the options as given; NULL where not. */
-typedef struct
+/* Options and who takes them. */
+typedef enum { FORMAT, DIRECTION, AIM, HOLD, OUTPUT, PAPER, ORIENTATION, SEED, RULE, STEP, DELAY, ERROR, START, ROUNDS, N_OPTIONS } Option;
+
+static const struct
 {
-  char *format, *direction, *aim, *hold, *output, *paper, *orientation;
-} Texts;
+  const char *name;
+  Takes taken;
+  GOptionArg type;
+} options[N_OPTIONS] = {
+  [FORMAT] = { "format", TAKES_FORMAT, G_OPTION_ARG_STRING },
+  [DIRECTION] = { "direction", TAKES_DIRECTION, G_OPTION_ARG_STRING },
+  [AIM] = { "aim", TAKES_AIM, G_OPTION_ARG_STRING },
+  [HOLD] = { "hold", TAKES_AIM, G_OPTION_ARG_STRING },
+  [OUTPUT] = { "output", TAKES_OUTPUT, G_OPTION_ARG_FILENAME },
+  [PAPER] = { "paper", TAKES_PAPER, G_OPTION_ARG_STRING },
+  [ORIENTATION] = { "orientation", TAKES_PAPER, G_OPTION_ARG_STRING },
+  [SEED] = { "seed", TAKES_SEED, G_OPTION_ARG_STRING },
+  [RULE] = { "rule", TAKES_LOOP, G_OPTION_ARG_STRING },
+  [STEP] = { "step", TAKES_LOOP, G_OPTION_ARG_STRING },
+  [DELAY] = { "delay", TAKES_LOOP, G_OPTION_ARG_STRING },
+  [ERROR] = { "error", TAKES_LOOP, G_OPTION_ARG_STRING },
+  [START] = { "start", TAKES_LOOP, G_OPTION_ARG_STRING },
+  [ROUNDS] = { "rounds", TAKES_LOOP, G_OPTION_ARG_STRING },
+};
+
+/* Texts of the options as given; NULL where not. */
+typedef char *Texts[N_OPTIONS];
 
 static gboolean
-wrong (const char *option, const char *text, const char *expected)
+wrong (Option option, const char *text, const char *expected)
 {
-  ut_complain ("--%s %s: not understood; expected %s", option, text, expected);
+  ut_complain ("--%s %s: not understood; expected %s", options[option].name, text, expected);
   return FALSE;
 }
 
+/* A number with a decimal point in [least, most]; what is not given leaves *value alone. */
 static gboolean
-not_taken (const Verb *verb, const char *option, const char *text)
+read_number (char *const *texts, Option option, double least, double most, const char *expected, double *value)
 {
+  const char *text = texts[option];
+  char *end;
+  double number;
+
   if (text == NULL)
-    return FALSE;
-  ut_complain ("%s does not take --%s; see undertone-cli --help", verb->name, option);
+    return TRUE;
+  number = g_ascii_strtod (text, &end);
+  if (end == text || *end != '\0' || !isfinite (number) || number < least || number > most)
+    return wrong (option, text, expected);
+  *value = number;
   return TRUE;
 }
 
 static gboolean
-read_hold (const char *text, double *hold_db)
+read_whole (char *const *texts, Option option, guint most, const char *expected, guint *value)
 {
-  char *end;
-  double value = g_ascii_strtod (text, &end);
+  guint64 number;
 
-  if (end == text || *end != '\0' || !isfinite (value) || value < 0 || value > 400)
-    return FALSE;
-  *hold_db = value;
+  if (texts[option] == NULL)
+    return TRUE;
+  if (!g_ascii_string_to_unsigned (texts[option], 10, 0, most, &number, NULL))
+    return wrong (option, texts[option], expected);
+  *value = (guint) number;
   return TRUE;
+}
+
+/* One of a few words; their order is that of the values. */
+static gboolean
+read_word (char *const *texts, Option option, const char *const *words, const char *expected, guint *value)
+{
+  if (texts[option] == NULL)
+    return TRUE;
+  for (guint k = 0; words[k] != NULL; k++)
+    if (strcmp (texts[option], words[k]) == 0)
+      {
+        *value = k;
+        return TRUE;
+      }
+  return wrong (option, texts[option], expected);
 }
 
 static gboolean
@@ -113,51 +175,66 @@ read_format (const Verb *verb, const char *text, UtFormat *format)
 }
 
 static gboolean
-read_question (const Texts *texts, UtQuestion *question)
+read_question (char *const *texts, UtQuestion *question)
 {
-  if (texts->direction != NULL && !ut_direction_from_word (texts->direction, &question->direction))
-    return wrong ("direction", texts->direction, "down or up");
-  if (texts->aim != NULL && !ut_aim_from_word (texts->aim, &question->aim))
-    return wrong ("aim", texts->aim, "least-power, equal-margin, fewest-dropped or as-set");
-  if (texts->hold != NULL && !read_hold (texts->hold, &question->hold_db))
-    return wrong ("hold", texts->hold, "dB from 0 to 400, with a decimal point");
-  return TRUE;
+  if (texts[DIRECTION] != NULL && !ut_direction_from_word (texts[DIRECTION], &question->direction))
+    return wrong (DIRECTION, texts[DIRECTION], "down or up");
+  if (texts[AIM] != NULL && !ut_aim_from_word (texts[AIM], &question->aim))
+    return wrong (AIM, texts[AIM], "least-power, equal-margin, fewest-dropped or as-set");
+  return read_number (texts, HOLD, 0, 400, "dB from 0 to 400, with a decimal point", &question->hold_db);
 }
 
 static gboolean
-read_page (const Texts *texts, UtOrder *order)
+read_page (char *const *texts, UtOrder *order)
 {
   order->page.orientation = UT_LANDSCAPE;
-  if (texts->paper != NULL && !ut_paper_from_word (texts->paper, &order->page.paper))
-    return wrong ("paper", texts->paper, "a4, a3, letter or tabloid");
-  if (texts->orientation != NULL && !ut_orientation_from_word (texts->orientation, &order->page.orientation))
-    return wrong ("orientation", texts->orientation, "portrait or landscape");
-  if (texts->output == NULL)
+  if (texts[PAPER] != NULL && !ut_paper_from_word (texts[PAPER], &order->page.paper))
+    return wrong (PAPER, texts[PAPER], "a4, a3, letter or tabloid");
+  if (texts[ORIENTATION] != NULL && !ut_orientation_from_word (texts[ORIENTATION], &order->page.orientation))
+    return wrong (ORIENTATION, texts[ORIENTATION], "portrait or landscape");
+  if (texts[OUTPUT] == NULL)
     {
       ut_complain ("page needs --output FILE, a name ending in .pdf, .svg or .png");
       return FALSE;
     }
-  order->output = texts->output;
+  return TRUE;
+}
+
+static gboolean
+read_loop (char *const *texts, UtControlSetup *loop)
+{
+  static const char *const rules[] = { "exact", "steps", NULL };
+  static const char *const starts[] = { "set", "least", "most", NULL };
+  guint rule = loop->rule, start = loop->start;
+
+  if (!read_word (texts, RULE, rules, "exact or steps", &rule) || !read_word (texts, START, starts, "set, least or most", &start)
+      || !read_number (texts, STEP, 0.001, 100, "dB from 0.001 to 100, with a decimal point", &loop->step_db)
+      || !read_number (texts, ERROR, 0, 100, "dB from 0 to 100, with a decimal point", &loop->error_db)
+      || !read_whole (texts, DELAY, 1000, "a whole number of rounds from 0 to 1000", &loop->delay)
+      || !read_whole (texts, ROUNDS, 10000, "a whole number of rounds from 0 to 10000", &loop->rounds))
+    return FALSE;
+  loop->rule = (UtControlRule) rule;
+  loop->start = (UtControlStart) start;
   return TRUE;
 }
 
 /* Checks the options against what the verb takes and fills in the order. */
 static gboolean
-read_options (const Verb *verb, const Texts *texts, UtOrder *order)
+read_options (const Verb *verb, char *const *texts, UtOrder *order)
 {
-  if (!(verb->takes & TAKES_FORMAT) && not_taken (verb, "format", texts->format))
+  for (Option option = 0; option < N_OPTIONS; option++)
+    if (texts[option] != NULL && !(verb->takes & options[option].taken))
+      {
+        ut_complain ("%s does not take --%s; see undertone-cli --help", verb->name, options[option].name);
+        return FALSE;
+      }
+  if (texts[FORMAT] != NULL && !read_format (verb, texts[FORMAT], &order->format))
+    return wrong (FORMAT, texts[FORMAT], verb->takes & TAKES_CSV ? "text, json or csv" : "text or json");
+  order->output = texts[OUTPUT];
+  if (!read_question (texts, &order->question) || !read_loop (texts, &order->loop)
+      || !read_whole (texts, SEED, G_MAXUINT32, "a whole number from 0 to 4294967295", &order->loop.seed))
     return FALSE;
-  if (!(verb->takes & TAKES_QUESTION)
-      && (not_taken (verb, "direction", texts->direction) || not_taken (verb, "aim", texts->aim)
-          || not_taken (verb, "hold", texts->hold)))
-    return FALSE;
-  if (!(verb->takes & TAKES_PAGE)
-      && (not_taken (verb, "output", texts->output) || not_taken (verb, "paper", texts->paper)
-          || not_taken (verb, "orientation", texts->orientation)))
-    return FALSE;
-  if (texts->format != NULL && !read_format (verb, texts->format, &order->format))
-    return wrong ("format", texts->format, verb->takes & TAKES_CSV ? "text, json or csv" : "text or json");
-  return read_question (texts, &order->question) && (!(verb->takes & TAKES_PAGE) || read_page (texts, order));
+  return !(verb->takes & TAKES_PAPER) || read_page (texts, order);
 }
 
 static const Verb *
@@ -170,19 +247,22 @@ find_verb (const char *name)
 }
 
 static UtExit
-run (char **words, const Texts *texts)
+run (char **words, char *const *texts)
 {
   const Verb *verb = words[0] != NULL ? find_verb (words[0]) : NULL;
-  UtOrder order = { .question = { .reserves = TRUE, .remedies = TRUE } };
+  UtOrder order = {
+    .question = { .reserves = TRUE, .remedies = TRUE },
+    .loop = { .step_db = 1, .seed = 1, .rounds = 30 },
+  };
 
   if (words[0] == NULL)
     {
-      ut_complain ("no verb given; expected check, gains, path, solve or page, see undertone-cli --help");
+      ut_complain ("no verb given; expected %s, see undertone-cli --help", verb_names);
       return UT_EXIT_WRONG_USE;
     }
   if (verb == NULL)
     {
-      ut_complain ("there is no verb \"%s\"; expected check, gains, path, solve or page", words[0]);
+      ut_complain ("there is no verb \"%s\"; expected %s", words[0], verb_names);
       return UT_EXIT_WRONG_USE;
     }
   order.arguments = words + 1;
@@ -203,22 +283,16 @@ main (int argc, char **argv)
   gboolean help = FALSE, version = FALSE;
   g_auto (GStrv) words = NULL;
   g_autoptr (GError) error = NULL;
-  const GOptionEntry entries[] = {
+  GOptionEntry entries[N_OPTIONS + 4] = {
     { "help", 'h', 0, G_OPTION_ARG_NONE, &help, NULL, NULL },
     { "version", 0, 0, G_OPTION_ARG_NONE, &version, NULL, NULL },
-    { "format", 0, 0, G_OPTION_ARG_STRING, &texts.format, NULL, NULL },
-    { "direction", 0, 0, G_OPTION_ARG_STRING, &texts.direction, NULL, NULL },
-    { "aim", 0, 0, G_OPTION_ARG_STRING, &texts.aim, NULL, NULL },
-    { "hold", 0, 0, G_OPTION_ARG_STRING, &texts.hold, NULL, NULL },
-    { "output", 0, 0, G_OPTION_ARG_FILENAME, &texts.output, NULL, NULL },
-    { "paper", 0, 0, G_OPTION_ARG_STRING, &texts.paper, NULL, NULL },
-    { "orientation", 0, 0, G_OPTION_ARG_STRING, &texts.orientation, NULL, NULL },
     { G_OPTION_REMAINING, 0, 0, G_OPTION_ARG_FILENAME_ARRAY, &words, NULL, NULL },
-    { NULL },
   };
   char *no_words[] = { NULL };
   UtExit exit = UT_EXIT_DONE;
 
+  for (Option option = 0; option < N_OPTIONS; option++)
+    entries[3 + option] = (GOptionEntry){ options[option].name, 0, 0, options[option].type, &texts[option], NULL, NULL };
   setlocale (LC_ALL, "");
   g_autoptr (GOptionContext) context = g_option_context_new (NULL);
   g_option_context_set_help_enabled (context, FALSE);
@@ -233,10 +307,9 @@ main (int argc, char **argv)
   else if (version)
     printf ("undertone-cli %s\n", UT_VERSION);
   else
-    exit = run (words != NULL ? words : no_words, &texts);
+    exit = run (words != NULL ? words : no_words, texts);
 
-  char **given[] = { &texts.format, &texts.direction, &texts.aim, &texts.hold, &texts.output, &texts.paper, &texts.orientation };
-  for (gsize i = 0; i < G_N_ELEMENTS (given); i++)
-    g_free (*given[i]);
+  for (Option option = 0; option < N_OPTIONS; option++)
+    g_free (texts[option]);
   return (int) exit;
 }

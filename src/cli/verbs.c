@@ -7,10 +7,12 @@
 
 #include <gio/gio.h>
 
+#include "channels.h"
 #include "page-file.h"
 #include "path.h"
 #include "plan-check.h"
 #include "plan-read.h"
+#include "plan-write.h"
 #include "report.h"
 
 void
@@ -203,6 +205,48 @@ ut_verb_solve (const UtOrder *order)
   if (exit != UT_EXIT_DONE)
     return exit;
   return ut_study_all_met (study) ? UT_EXIT_DONE : UT_EXIT_NOT_ALL_MET;
+}
+
+UtExit
+ut_verb_channels (const UtOrder *order)
+{
+  g_autoptr (UtPlan) plan = (UtPlan *) open_plan (order);
+  g_autoptr (GError) error = NULL;
+  g_autoptr (GFile) file = order->output != NULL ? g_file_new_for_commandline_arg (order->output) : NULL;
+
+  if (plan == NULL)
+    return UT_EXIT_BAD_PLAN;
+  g_autoptr (UtGains) gains = ut_gains_new (plan, NULL);
+  g_autoptr (UtChannels) channels = ut_channels_new (gains, order->question.direction, order->loop.seed, UT_CHANNELS_MOST_TRIED, NULL);
+  warn_all (ut_wall_index_warnings (gains->index));
+  if (plan->carrier->channels == 1)
+    ut_complain ("warning: the plan has one channel; with carrier.channels above 1 there is something to choose");
+  if (file != NULL && !ut_plan_write_file (channels->plan, file, NULL, NULL, &error))
+    {
+      ut_complain ("%s: cannot be written: %s", order->output, error->message);
+      return UT_EXIT_NOT_WRITTEN;
+    }
+  return print_text (order->format == UT_FORMAT_JSON ? ut_report_channels_json (channels) : ut_report_channels_text (channels, plan));
+}
+
+UtExit
+ut_verb_control (const UtOrder *order)
+{
+  g_autoptr (UtPlan) plan = (UtPlan *) open_plan (order);
+  UtQuestion question = { .direction = order->question.direction };
+
+  if (plan == NULL)
+    return UT_EXIT_BAD_PLAN;
+  g_autoptr (UtStudy) study = ut_study_new (plan, &question, NULL);
+  g_autoptr (UtControl) control = ut_control_new (study, &order->loop);
+  warn_all (ut_wall_index_warnings (study->gains->index));
+  for (guint i = 0; i < study->links->len; i++)
+    if (ut_study_link (study, i)->cell < 0)
+      ut_complain ("warning: terminal %s has no cell that is on; it takes no part",
+                   ut_plan_terminal (plan, ut_study_link (study, i)->terminal)->radio.id);
+  return print_text (order->format == UT_FORMAT_JSON  ? ut_report_control_json (control)
+                     : order->format == UT_FORMAT_CSV ? ut_report_control_csv (control)
+                                                      : ut_report_control_text (control));
 }
 
 UtExit

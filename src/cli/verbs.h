@@ -1,6 +1,7 @@
 /* The verbs of the command line: one function each, one line each in the table of main.c. */
 #pragma once
 
+#include "control.h"
 #include "page.h"
 #include "study.h"
 
@@ -23,6 +24,7 @@ typedef struct
   UtFormat format;
   UtQuestion question;
   UtPageSetup page;
+  UtControlSetup loop; /* its seed is the order's seed */
   const char *output; /* NULL: not given */
 } UtOrder;
 
@@ -30,6 +32,8 @@ UtExit ut_verb_check (const UtOrder *order);
 UtExit ut_verb_gains (const UtOrder *order);
 UtExit ut_verb_path (const UtOrder *order);
 UtExit ut_verb_solve (const UtOrder *order);
+UtExit ut_verb_channels (const UtOrder *order);
+UtExit ut_verb_control (const UtOrder *order);
 UtExit ut_verb_page (const UtOrder *order);
 
 /* One line on standard error, with the program's name before it. */

@@ -242,3 +242,50 @@ ut_links_system (const UtLinks *links, gboolean clip, UtSystem *system)
     (links->direction == UT_DIRECTION_DOWN ? fill_orthogonal_down : fill_orthogonal_up) (links, clip, system);
   return ut_system_finish (system);
 }
+
+/* Orthogonal uplink with an unknown a terminal: of every other cell's the loudest counts. */
+static void
+fill_uplink_radios (const UtLinks *links, UtSystem *system)
+{
+  for (guint i = 0; i < links->links->len; i++)
+    {
+      const UtLink *link = ut_links_link (links, i);
+      double per_mw = link->need / link->gain;
+
+      ut_system_set_floor (system, i, held (link->minimum_mw, link->limit_mw, TRUE), held (link->level_mw / link->gain, link->limit_mw, TRUE));
+      ut_system_add_piece (system, i, per_mw * link->noise_mw, 0);
+      for (guint c = 0; c < links->gains->n_cells; c++)
+        {
+          double isolation = ut_links_coupling (links, (guint) link->cell, c);
+
+          if (c == (guint) link->cell || links->n_served[c] == 0 || isolation <= 0)
+            continue;
+          ut_system_add_group (system, 0, 0);
+          for (guint k = 0; k < links->n_served[c]; k++)
+            {
+              guint j = ut_links_served (links, c, k);
+              const UtLink *other = ut_links_link (links, j);
+
+              ut_system_add_term (system, j, isolation * link_activity (links, other) * gain_to (links, other->terminal, (guint) link->cell) * per_mw);
+            }
+        }
+      ut_system_add_limit (system, link->limit_mw);
+      ut_system_add_member (system, i);
+    }
+}
+
+UtPowerStatus
+ut_links_radio_system (const UtLinks *links, UtSystem *system)
+{
+  if (links->simultaneous || links->direction == UT_DIRECTION_DOWN)
+    return ut_links_system (links, TRUE, system);
+  ut_system_init (system, links->links->len);
+  fill_uplink_radios (links, system);
+  return ut_system_finish (system);
+}
+
+guint
+ut_links_radio_unknown (const UtLinks *links, guint index)
+{
+  return links->simultaneous || links->direction == UT_DIRECTION_DOWN ? (guint) ut_links_unknown (links, index) : index;
+}

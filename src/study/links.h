@@ -93,6 +93,13 @@ double ut_radio_limit_mw (const UtPlan *plan, const UtRadio *radio);
  * clip: minima and levels above what the limits allow are held down to them, so that some powers always exist. */
 UtPowerStatus ut_links_system (const UtLinks *links, gboolean clip, UtSystem *system);
 
+/* The same with one unknown for every power that a radio sets by itself: a cell (orthogonal downlink), else a link. All links must have a cell; minima
+ * and levels are held down to the limits. */
+UtPowerStatus ut_links_radio_system (const UtLinks *links, UtSystem *system);
+
+/* The unknown of a link in that system. */
+guint ut_links_radio_unknown (const UtLinks *links, guint index);
+
 UtPowers ut_powers_new (const UtLinks *links);
 void ut_powers_clear (UtPowers *powers);
 

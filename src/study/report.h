@@ -1,12 +1,21 @@
 /* Answers as text, JSON and CSV (docs/command-line.md).  All return text to be freed, ending in a newline. */
 #pragma once
 
+#include "channels.h"
+#include "control.h"
 #include "study.h"
 #include "path.h"
 
 char *ut_report_study_json (const UtStudy *study);
 char *ut_report_study_text (const UtStudy *study);
 char *ut_report_study_csv (const UtStudy *study);
+
+char *ut_report_channels_json (const UtChannels *channels);
+char *ut_report_channels_text (const UtChannels *channels, const UtPlan *plan);
+
+char *ut_report_control_json (const UtControl *control);
+char *ut_report_control_text (const UtControl *control);
+char *ut_report_control_csv (const UtControl *control);
 
 char *ut_report_gains_json (const UtGains *gains);
 char *ut_report_gains_text (const UtGains *gains);

@@ -36,14 +36,17 @@ for words, expected in (([], "no verb"), (["paint", rooms], "paint"), (["solve"]
                         (["solve", rooms, "--hold", "nan"], "nan"), (["solve", rooms, "--nonsense"], "nonsense"), (["check", rooms, "--aim", "as-set"], "aim"),
                         (["gains", rooms, "--direction", "up"], "direction"), (["path", rooms, "C1", "T1", "--format", "csv"], "csv"),
                         (["page", rooms], "output"), (["page", rooms, "--output", "sheet.doc"], "sheet.doc"),
-                        (["page", rooms, "--output", "x.pdf", "--paper", "a5"], "a5"), (["path", rooms, "C9", "T1"], "C9"), (["path", rooms, "C1", "T9"], "T9")):
+                        (["page", rooms, "--output", "x.pdf", "--paper", "a5"], "a5"), (["channels", rooms, "--seed", "x"], "x"), (["channels", rooms, "--aim", "as-set"], "aim"),
+                        (["channels", rooms, "--format", "csv"], "csv"), (["control", rooms, "--rule", "guess"], "guess"), (["control", rooms, "--step", "0"], "step"),
+                        (["control", rooms, "--rounds", "-3"], "rounds"), (["control", rooms, "--delay", "1.5"], "delay"), (["control", rooms, "--hold", "1"], "hold"),
+                        (["solve", rooms, "--seed", "1"], "seed"), (["path", rooms, "C9", "T1"], "C9"), (["path", rooms, "C1", "T9"], "T9")):
     tap.check(f"wrong use: {' '.join(words[0:1] + words[2:])}", complaint(run(program, *words), 2, expected))
 for option in (["--help"], ["solve", "--help"], ["--version"], ["page", "--version"]):
     ran = run(program, *option)
     tap.check(f"{' '.join(option)} prints and ends well", same("exit", ran.returncode, 0) + same("errors", ran.stderr, b"") + ([] if ran.stdout else ["nothing"]))
 
 # Plans that cannot be read.
-for verb in (["check"], ["gains"], ["solve"], ["path", "C1", "T1"], ["page", "--output", "never.pdf"]):
+for verb in (["check"], ["gains"], ["solve"], ["channels"], ["control"], ["path", "C1", "T1"], ["page", "--output", "never.pdf"]):
     words = [verb[0], "no-such-file.undertone", *verb[1:]]
     tap.check(f"{verb[0]}: a missing file", complaint(run(program, *words), 3, "no-such-file.undertone"))
     words[1] = "-"
