@@ -17,6 +17,9 @@
 /* Each solve brings the vector nearer by about SHIFT over the distance to the next root. */
 #define N_SOLVES 3
 
+/* Smaller parts are not listed. */
+#define LEAST_PART 1e-6
+
 /* The linear system that is active at p. */
 typedef struct
 {
@@ -174,7 +177,7 @@ share_heard (void *data, size_t row, size_t unknown, double weight, double fixed
   Share *share = data;
   double part = share->scale * (weight > 0 ? weight * share->active->p[unknown] : fixed);
 
-  if (part > 0)
+  if (part > LEAST_PART)
     share->edge->parts[share->edge->n_parts++] = (UtEdgePart){ (uint32_t) row, (uint32_t) unknown, part };
 }
 

@@ -17,7 +17,7 @@ typedef struct
   double *involvement; /* n_unknowns, sums to 1: 1 dB less on all that the unknown asks for moves the edge by about that many dB */
   double *constant;    /* n_unknowns: the part of it that is noise, idle cells included; 0 at the edge of interference */
   size_t n_parts;
-  UtEdgePart *parts;   /* the rest of it, one for each pair, the largest first; adds up to 1 with the constants */
+  UtEdgePart *parts;   /* the rest of it, one for each pair, the largest first, those above 1e-6; adds up to 1 with the constants */
   size_t full_limit;   /* the limit that is full; n_limits at the edge of interference */
 } UtEdge;
 
