@@ -18,6 +18,7 @@ typedef enum
   TAKES_PAPER = 1 << 5,
   TAKES_SEED = 1 << 6,
   TAKES_LOOP = 1 << 7,
+  TAKES_WISH = 1 << 8,
 } Takes;
 
 typedef struct
@@ -38,10 +39,11 @@ static const Verb verbs[] = {
   { "channels", "PLAN", 1, TAKES_FORMAT | TAKES_DIRECTION | TAKES_SEED | TAKES_OUTPUT, ut_verb_channels, "the cells' channels with the largest headroom" },
   { "control", "PLAN", 1, TAKES_FORMAT | TAKES_CSV | TAKES_DIRECTION | TAKES_SEED | TAKES_LOOP, ut_verb_control,
     "the radios finding their powers by themselves" },
+  { "target", "", 0, TAKES_FORMAT | TAKES_DIRECTION | TAKES_WISH, ut_verb_target, "SINR targets, bit rates and bandwidths (no plan)" },
   { "page", "PLAN --output FILE", 1, TAKES_DIRECTION | TAKES_AIM | TAKES_OUTPUT | TAKES_PAPER, ut_verb_page, "the one page as .pdf, .svg or .png" },
 };
 
-static const char verb_names[] = "check, gains, path, solve, channels, control or page";
+static const char verb_names[] = "check, gains, path, solve, channels, control, target or page";
 
 static const char options_help[] =
   "Options\n"
@@ -60,6 +62,11 @@ static const char options_help[] =
   "  --error DB                  control: what a radio measures is off by up to so much (default 0)\n"
   "  --start set|least|most      control: powers to start from (default set)\n"
   "  --rounds N                  control: how many (default 30)\n"
+  "  --efficiency BIT_S_HZ | --rate MBIT_S | --sinr DB\n"
+  "                              target: what is wanted; the other two follow\n"
+  "  --bandwidth MHZ | --channel MHZ --subcarrier KHZ\n"
+  "                              target: occupied bandwidth, or the radio channel it follows from\n"
+  "  --level DBM                 target: a level over the whole band, told per resource element\n"
   "  --help, --version\n"
   "\n"
   "PLAN may be -, standard input.\n"
@@ -81,7 +88,7 @@ print_help (void)
 }
 
 /* Options and who takes them. */
-typedef enum { FORMAT, DIRECTION, AIM, HOLD, OUTPUT, PAPER, ORIENTATION, SEED, RULE, STEP, DELAY, ERROR, START, ROUNDS, N_OPTIONS } Option;
+typedef enum { FORMAT, DIRECTION, AIM, HOLD, OUTPUT, PAPER, ORIENTATION, SEED, RULE, STEP, DELAY, ERROR, START, ROUNDS, EFFICIENCY, RATE, SINR, BANDWIDTH, CHANNEL, SUBCARRIER, LEVEL, N_OPTIONS } Option;
 
 static const struct
 {
@@ -103,6 +110,13 @@ static const struct
   [ERROR] = { "error", TAKES_LOOP, G_OPTION_ARG_STRING },
   [START] = { "start", TAKES_LOOP, G_OPTION_ARG_STRING },
   [ROUNDS] = { "rounds", TAKES_LOOP, G_OPTION_ARG_STRING },
+  [EFFICIENCY] = { "efficiency", TAKES_WISH, G_OPTION_ARG_STRING },
+  [RATE] = { "rate", TAKES_WISH, G_OPTION_ARG_STRING },
+  [SINR] = { "sinr", TAKES_WISH, G_OPTION_ARG_STRING },
+  [BANDWIDTH] = { "bandwidth", TAKES_WISH, G_OPTION_ARG_STRING },
+  [CHANNEL] = { "channel", TAKES_WISH, G_OPTION_ARG_STRING },
+  [SUBCARRIER] = { "subcarrier", TAKES_WISH, G_OPTION_ARG_STRING },
+  [LEVEL] = { "level", TAKES_WISH, G_OPTION_ARG_STRING },
 };
 
 /* Texts of the options as given; NULL where not. */
@@ -218,6 +232,31 @@ read_loop (char *const *texts, UtControlSetup *loop)
   return TRUE;
 }
 
+static gboolean
+read_wish (char *const *texts, UtWish *wish)
+{
+  const struct
+  {
+    Option option;
+    double least, most;
+    double *value;
+  } wishes[] = {
+    { EFFICIENCY, 0, 100, &wish->bit_s_hz },   { RATE, 0, 1e6, &wish->rate_mbit_s },        { SINR, -400, 400, &wish->sinr_db },
+    { BANDWIDTH, 1e-6, 1e6, &wish->bandwidth_mhz }, { CHANNEL, 0, 1e6, &wish->channel_mhz }, { SUBCARRIER, 0, 1e6, &wish->subcarrier_khz },
+    { LEVEL, -400, 400, &wish->level_dbm },
+  };
+
+  for (gsize i = 0; i < G_N_ELEMENTS (wishes); i++)
+    {
+      g_autofree char *expected = g_strdup_printf ("a number from %g to %g, with a decimal point", wishes[i].least, wishes[i].most);
+
+      *wishes[i].value = NAN;
+      if (!read_number (texts, wishes[i].option, wishes[i].least, wishes[i].most, expected, wishes[i].value))
+        return FALSE;
+    }
+  return TRUE;
+}
+
 /* Checks the options against what the verb takes and fills in the order. */
 static gboolean
 read_options (const Verb *verb, char *const *texts, UtOrder *order)
@@ -231,7 +270,7 @@ read_options (const Verb *verb, char *const *texts, UtOrder *order)
   if (texts[FORMAT] != NULL && !read_format (verb, texts[FORMAT], &order->format))
     return wrong (FORMAT, texts[FORMAT], verb->takes & TAKES_CSV ? "text, json or csv" : "text or json");
   order->output = texts[OUTPUT];
-  if (!read_question (texts, &order->question) || !read_loop (texts, &order->loop)
+  if (!read_wish (texts, &order->wish) || !read_question (texts, &order->question) || !read_loop (texts, &order->loop)
       || !read_whole (texts, SEED, G_MAXUINT32, "a whole number from 0 to 4294967295", &order->loop.seed))
     return FALSE;
   return !(verb->takes & TAKES_PAPER) || read_page (texts, order);
@@ -251,7 +290,7 @@ run (char **words, char *const *texts)
 {
   const Verb *verb = words[0] != NULL ? find_verb (words[0]) : NULL;
   UtOrder order = {
-    .question = { .reserves = TRUE, .remedies = TRUE },
+    .question = { .reserves = TRUE, .chances = TRUE, .remedies = TRUE },
     .loop = { .step_db = 1, .seed = 1, .rounds = 30 },
   };
 

@@ -94,8 +94,8 @@ open_plan (const UtOrder *order)
   return plan;
 }
 
-static UtExit
-print_text (char *text)
+UtExit
+ut_print_text (char *text)
 {
   gboolean written = fputs (text, stdout) >= 0 && fflush (stdout) == 0;
 
@@ -123,7 +123,7 @@ ut_verb_check (const UtOrder *order)
     }
   for (guint i = 0; i < plan->storeys->len; i++)
     walls += ut_plan_storey (plan, i)->walls->len;
-  return print_text (g_strdup_printf ("%s: valid; %u storeys, %u walls, %u cells, %u terminals\n",
+  return ut_print_text (g_strdup_printf ("%s: valid; %u storeys, %u walls, %u cells, %u terminals\n",
                                       order->arguments[0],
                                       plan->storeys->len,
                                       walls,
@@ -139,17 +139,20 @@ ut_verb_gains (const UtOrder *order)
   if (plan == NULL)
     return UT_EXIT_BAD_PLAN;
   g_autoptr (UtGains) gains = ut_gains_new (plan, NULL);
+  g_autofree char *range = ut_gains_range_warning (gains);
   warn_all (ut_wall_index_warnings (gains->index));
+  if (range != NULL)
+    ut_complain ("warning: %s", range);
   switch (order->format)
     {
     case UT_FORMAT_JSON:
-      return print_text (ut_report_gains_json (gains));
+      return ut_print_text (ut_report_gains_json (gains));
     case UT_FORMAT_CSV:
-      return print_text (ut_report_gains_csv (gains));
+      return ut_print_text (ut_report_gains_csv (gains));
     case UT_FORMAT_TEXT:
       break;
     }
-  return print_text (ut_report_gains_text (gains));
+  return ut_print_text (ut_report_gains_text (gains));
 }
 
 UtExit
@@ -181,7 +184,13 @@ ut_verb_path (const UtOrder *order)
   warn_all (ut_wall_index_warnings (index));
   if (path.wall_at_antenna)
     ut_complain ("warning: a wall passes through an antenna of this pair; it is counted");
-  UtExit exit = print_text (order->format == UT_FORMAT_JSON
+  if (path.outside_range && !path.measured)
+    {
+      g_autofree char *range = ut_path_range_text (plan, &path);
+
+      ut_complain ("warning: the law %s; this pair lies outside, at %.1f m and %g GHz", range, path.distance_m, plan->carrier->frequency_mhz / 1e3);
+    }
+  UtExit exit = ut_print_text (order->format == UT_FORMAT_JSON
                               ? ut_report_path_json (plan, (guint) cell, (guint) terminal, &path)
                               : ut_report_path_text (plan, (guint) cell, (guint) terminal, &path));
   ut_path_clear (&path);
@@ -201,7 +210,7 @@ ut_verb_solve (const UtOrder *order)
                                                 : ut_report_study_text (study);
 
   warn_all (study->warnings);
-  UtExit exit = print_text (text);
+  UtExit exit = ut_print_text (text);
   if (exit != UT_EXIT_DONE)
     return exit;
   return ut_study_all_met (study) ? UT_EXIT_DONE : UT_EXIT_NOT_ALL_MET;
@@ -226,7 +235,7 @@ ut_verb_channels (const UtOrder *order)
       ut_complain ("%s: cannot be written: %s", order->output, error->message);
       return UT_EXIT_NOT_WRITTEN;
     }
-  return print_text (order->format == UT_FORMAT_JSON ? ut_report_channels_json (channels) : ut_report_channels_text (channels, plan));
+  return ut_print_text (order->format == UT_FORMAT_JSON ? ut_report_channels_json (channels) : ut_report_channels_text (channels, plan));
 }
 
 UtExit
@@ -244,7 +253,7 @@ ut_verb_control (const UtOrder *order)
     if (ut_study_link (study, i)->cell < 0)
       ut_complain ("warning: terminal %s has no cell that is on; it takes no part",
                    ut_plan_terminal (plan, ut_study_link (study, i)->terminal)->radio.id);
-  return print_text (order->format == UT_FORMAT_JSON  ? ut_report_control_json (control)
+  return ut_print_text (order->format == UT_FORMAT_JSON  ? ut_report_control_json (control)
                      : order->format == UT_FORMAT_CSV ? ut_report_control_csv (control)
                                                       : ut_report_control_text (control));
 }

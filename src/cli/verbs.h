@@ -17,6 +17,14 @@ typedef enum
   UT_EXIT_NOT_WRITTEN = 4,
 } UtExit;
 
+/* Of the verb target: what is wanted; NAN: not given. */
+typedef struct
+{
+  double bit_s_hz, rate_mbit_s, sinr_db;
+  double bandwidth_mhz, channel_mhz, subcarrier_khz;
+  double level_dbm;
+} UtWish;
+
 /* What was asked for on the command line. */
 typedef struct
 {
@@ -25,6 +33,7 @@ typedef struct
   UtQuestion question;
   UtPageSetup page;
   UtControlSetup loop; /* its seed is the order's seed */
+  UtWish wish;
   const char *output; /* NULL: not given */
 } UtOrder;
 
@@ -35,6 +44,11 @@ UtExit ut_verb_solve (const UtOrder *order);
 UtExit ut_verb_channels (const UtOrder *order);
 UtExit ut_verb_control (const UtOrder *order);
 UtExit ut_verb_page (const UtOrder *order);
+
+UtExit ut_verb_target (const UtOrder *order);
+
+/* Takes the text over and prints it; UT_EXIT_NOT_WRITTEN, and a complaint, where that fails. */
+UtExit ut_print_text (char *text);
 
 /* One line on standard error, with the program's name before it. */
 void ut_complain (const char *format, ...) G_GNUC_PRINTF (1, 2);

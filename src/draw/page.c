@@ -152,20 +152,12 @@ draw_verdict (cairo_t *cr, const UtStudy *study, const UtBox *box)
 }
 
 static char *
-law_text (const UtPropagation *propagation)
-{
-  if (propagation->law == UT_BASE_LOG_DISTANCE)
-    return g_strdup_printf ("log-distance, exponent %g from %g m", propagation->exponent, propagation->reference_m);
-  return g_strdup ("free space (ITU-R P.525)");
-}
-
-static char *
 assumptions (const UtStudy *study)
 {
   const UtPlan *plan = study->gains->plan;
   const UtCarrier *carrier = plan->carrier;
   const UtPropagation *propagation = plan->propagation;
-  g_autofree char *law = law_text (propagation);
+  g_autofree char *law = ut_study_law_text (study);
   g_autofree char *model_error = propagation->shadowing_db > 0
                                    ? g_strdup_printf ("Each gain is a median; single links scatter about it by some ±%g dB.", propagation->shadowing_db)
                                    : g_strdup ("Each gain is a median; single links scatter about it.");

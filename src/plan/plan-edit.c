@@ -273,6 +273,8 @@ ut_plan_with_measured_gain (const UtPlan *plan,
   UtPlan *next = begin (plan);
   UtMeasuredGain *gain = ut_measured_gain_new ();
   int index = -1;
+  g_free (gain->terminal);
+  g_free (gain->cell);
   gain->terminal = g_strdup (terminal);
   gain->cell = g_strdup (cell);
   gain->gain_db = gain_db;

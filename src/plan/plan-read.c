@@ -82,6 +82,7 @@ read_null (const UtKey *key, gpointer item)
       UT_FIELD (int, item, key) = 0;
       break;
     case UT_KEY_REFERENCE:
+    case UT_KEY_WORD:
       g_clear_pointer (&UT_FIELD (char *, item, key), g_free);
       break;
     default: /* an object: a new item has none */

@@ -5,8 +5,14 @@
 static const char *const sharing_words[] = { "orthogonal", "simultaneous", NULL };
 static const char *const polarization_words[] = { "vertical", "horizontal", "mixed", NULL };
 static const char *const slab_words[] = { "coherent", "averaged", NULL };
-static const char *const law_words[] = { "free-space", "log-distance", NULL };
-static const char *const pattern_words[] = { "isotropic", "sector", NULL };
+static const char *const law_words[]
+    = { "free-space",    "log-distance",   "site-general", "distance-coefficient",
+        "indoor-office", "indoor-factory", "multi-wall",   NULL };
+static const char *const environment_words[] = { "office", "corridor", "industrial", NULL };
+static const char *const sight_words[] = { "los", "nlos", "by-walls", NULL };
+static const char *const clutter_words[] = { "sl", "dl", "sh", "dh", NULL };
+static const char *const class_words[] = { "light", "heavy", NULL };
+static const char *const pattern_words[] = { "isotropic", "sector", "dipole", "cuts", NULL };
 static const char *const picture_words[] = { "image/png", "image/jpeg", NULL };
 static const char *const material_words[]
     = { "concrete",  "brick",   "plasterboard", "wood",       "glass", "ceiling-board",
@@ -27,6 +33,9 @@ static const char *const material_words[]
 #define REQUIRED .flags = UT_KEY_REQUIRED
 #define NULLABLE .flags = UT_KEY_NULLABLE, .value = NAN
 #define ONLY(variant) .variants = 1u << (variant)
+#define SIGHTED                                                                                    \
+  .variants = 1u << UT_BASE_SITE_GENERAL | 1u << UT_BASE_INDOOR_OFFICE | 1u << UT_BASE_INDOOR_FACTORY
+#define ONE_GAIN .variants = 1u << UT_ANTENNA_ISOTROPIC | 1u << UT_ANTENNA_SECTOR
 #define NUMBER(Struct, field) .name = #field, .type = UT_KEY_NUMBER, FIELD (Struct, field)
 #define TEXT(Struct, field) .name = #field, .type = UT_KEY_TEXT, FIELD (Struct, field), .text = ""
 #define FLAG(Struct, field, on)                                                                    \
@@ -90,6 +99,23 @@ static const UtKey base_keys[] = {
   { CHOICE (UtPropagation, law, law_words), REQUIRED },
   { NUMBER (UtPropagation, exponent), ABOVE_0, REQUIRED, .value = 2, ONLY (UT_BASE_LOG_DISTANCE) },
   { NUMBER (UtPropagation, reference_m), ABOVE_0, .value = 1, ONLY (UT_BASE_LOG_DISTANCE) },
+  { CHOICE (UtPropagation, environment, environment_words), REQUIRED, ONLY (UT_BASE_SITE_GENERAL) },
+  { CHOICE (UtPropagation, sight, sight_words), .value = UT_BASE_BY_WALLS, SIGHTED },
+  { CHOICE (UtPropagation, clutter, clutter_words), REQUIRED, ONLY (UT_BASE_INDOOR_FACTORY) },
+  { NUMBER (UtPropagation, coefficient),
+    ABOVE_0,
+    REQUIRED,
+    .value = 30,
+    ONLY (UT_BASE_DISTANCE_COEFFICIENT) },
+  { .name = "floor_loss_db",
+    .type = UT_KEY_NUMBERS,
+    FIELD (UtPropagation, floor_loss_db),
+    LOSS_DB,
+    ONLY (UT_BASE_DISTANCE_COEFFICIENT) },
+  { NUMBER (UtPropagation, light_db), LOSS_DB, .value = 3.4, ONLY (UT_BASE_MULTI_WALL) },
+  { NUMBER (UtPropagation, heavy_db), LOSS_DB, .value = 6.9, ONLY (UT_BASE_MULTI_WALL) },
+  { NUMBER (UtPropagation, floor_db), LOSS_DB, .value = 18.3, ONLY (UT_BASE_MULTI_WALL) },
+  { NUMBER (UtPropagation, b), FROM_0, .value = 0.46, ONLY (UT_BASE_MULTI_WALL) },
 };
 static const UtKind base_kind = { .label = "a base law",
                                   KEYS (base_keys),
@@ -148,6 +174,11 @@ static const UtKey construction_keys[] = {
   { NAME (UtConstruction) },
   { LIST (UtConstruction, layers, ut_kind_construction_layer), .flags = UT_KEY_SPARSE },
   { NUMBER (UtConstruction, loss_db), LOSS_DB, .flags = UT_KEY_SPARSE, .value = NAN },
+  { .name = "class",
+    .type = UT_KEY_WORD,
+    FIELD (UtConstruction, wall_class),
+    .flags = UT_KEY_SPARSE | UT_KEY_NULLABLE,
+    .words = class_words },
 };
 KIND (UtConstruction, ut_construction, construction) = { .label = "a construction",
                                                          .size = sizeof (UtConstruction),
@@ -227,9 +258,23 @@ KIND (UtStorey, ut_storey, storey) = { .label = "a storey",
 static const UtKey antenna_keys[] = {
   { ID (UtAntenna) },
   { CHOICE (UtAntenna, pattern, pattern_words), REQUIRED },
-  { NUMBER (UtAntenna, gain_dbi), DECIBELS },
+  { NUMBER (UtAntenna, gain_dbi), DECIBELS, ONE_GAIN },
   { NUMBER (UtAntenna, beamwidth_h_deg), ABOVE_0, REQUIRED, .value = 65, ONLY (UT_ANTENNA_SECTOR) },
   { NUMBER (UtAntenna, beamwidth_v_deg), ABOVE_0, REQUIRED, .value = 65, ONLY (UT_ANTENNA_SECTOR) },
+  { .name = "horizontal_dbi",
+    .type = UT_KEY_NUMBERS,
+    FIELD (UtAntenna, horizontal_dbi),
+    DECIBELS,
+    REQUIRED,
+    .least = 2,
+    ONLY (UT_ANTENNA_CUTS) },
+  { .name = "vertical_dbi",
+    .type = UT_KEY_NUMBERS,
+    FIELD (UtAntenna, vertical_dbi),
+    DECIBELS,
+    REQUIRED,
+    .least = 2,
+    ONLY (UT_ANTENNA_CUTS) },
 };
 KIND (UtAntenna, ut_antenna, antenna) = { .label = "an antenna",
                                           .size = sizeof (UtAntenna),

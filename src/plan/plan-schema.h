@@ -60,6 +60,7 @@ typedef struct
   const char *text;       /* the same for texts */
   double lowest, highest; /* number, integer */
   gboolean above;         /* lowest itself is not allowed */
+  guint least;            /* numbers: so many at least */
   guint variants;         /* bits of the variants that have this key; 0: all */
   const char *const *words;
   const UtKind *kind;

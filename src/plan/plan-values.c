@@ -191,6 +191,11 @@ ut_read_numbers (UtReader *reader, const UtKey *key, JsonNode *node, gpointer it
         good = FALSE;
       ut_reader_leave (reader, before);
     }
+  if (good && numbers->len < key->least)
+    {
+      ut_reader_fault (reader, "too short, %u figures; expected %u or more", numbers->len, key->least);
+      return FALSE;
+    }
   return good;
 }
 

@@ -186,9 +186,9 @@ write_value (Writer *writer, const UtKey *key, gconstpointer item)
       break;
     case UT_KEY_TEXT:
     case UT_KEY_ID:
-    case UT_KEY_WORD:
       write_text (writer, UT_FIELD (char *, item, key));
       break;
+    case UT_KEY_WORD:
     case UT_KEY_REFERENCE:
       write_text_or_null (writer, UT_FIELD (char *, item, key));
       break;

@@ -32,12 +32,38 @@ typedef enum
 typedef enum
 {
   UT_BASE_FREE_SPACE,
-  UT_BASE_LOG_DISTANCE
+  UT_BASE_LOG_DISTANCE,
+  UT_BASE_SITE_GENERAL,
+  UT_BASE_DISTANCE_COEFFICIENT,
+  UT_BASE_INDOOR_OFFICE,
+  UT_BASE_INDOOR_FACTORY,
+  UT_BASE_MULTI_WALL
 } UtBaseLaw;
 typedef enum
 {
+  UT_BASE_OFFICE,
+  UT_BASE_CORRIDOR,
+  UT_BASE_INDUSTRIAL
+} UtBaseEnvironment;
+typedef enum
+{
+  UT_BASE_LOS,
+  UT_BASE_NLOS,
+  UT_BASE_BY_WALLS
+} UtBaseSight;
+typedef enum
+{
+  UT_BASE_SL,
+  UT_BASE_DL,
+  UT_BASE_SH,
+  UT_BASE_DH
+} UtBaseClutter;
+typedef enum
+{
   UT_ANTENNA_ISOTROPIC,
-  UT_ANTENNA_SECTOR
+  UT_ANTENNA_SECTOR,
+  UT_ANTENNA_DIPOLE,
+  UT_ANTENNA_CUTS
 } UtAntennaPattern;
 
 /* Every item keeps the JSON object it was read from (NULL when made by the program): key order and
@@ -70,6 +96,12 @@ typedef struct
   JsonObject *source, *base_source;
   UtBaseLaw law;
   double exponent, reference_m; /* log-distance */
+  UtBaseEnvironment environment; /* site-general */
+  UtBaseSight sight;             /* site-general, indoor-office, indoor-factory */
+  UtBaseClutter clutter;         /* indoor-factory */
+  double coefficient;            /* distance-coefficient */
+  GArray *floor_loss_db;         /* the same; of double */
+  double light_db, heavy_db, floor_db, b; /* multi-wall */
   gboolean walls;
   double wall_loss_limit_db;
   double excess_loss_limit_db; /* NAN: null */
@@ -92,6 +124,7 @@ typedef struct
   char *id, *name;
   double loss_db;    /* NAN: by layers */
   GPtrArray *layers; /* of const UtConstructionLayer; empty when loss_db is given */
+  char *wall_class;  /* "light" or "heavy", for the multi-wall law; NULL: by its layers */
 } UtConstruction;
 
 typedef struct
@@ -148,6 +181,7 @@ typedef struct
   UtAntennaPattern pattern;
   double gain_dbi;
   double beamwidth_h_deg, beamwidth_v_deg; /* sector */
+  GArray *horizontal_dbi, *vertical_dbi;   /* cuts; of double */
 } UtAntenna;
 
 /* What cells and terminals have in common.  The file's key of each field is its name. */

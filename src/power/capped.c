@@ -3,7 +3,6 @@
 #include <float.h>
 #include <math.h>
 #include <stdlib.h>
-#include <string.h>
 
 #include "least.h"
 #include "perron.h"
@@ -33,8 +32,10 @@ part_init (Part *part, const UtSystem *system)
   part->pieces = malloc ((system->n_pieces + 1) * sizeof *part->pieces);
   if (part->minimum == NULL || part->pieces == NULL)
     return false;
-  memcpy (part->minimum, system->minimum, system->n_unknowns * sizeof *part->minimum);
-  memcpy (part->pieces, system->pieces, system->n_pieces * sizeof *part->pieces);
+  for (size_t i = 0; i < system->n_unknowns; i++)
+    part->minimum[i] = system->minimum[i];
+  for (size_t k = 0; k < system->n_pieces; k++)
+    part->pieces[k] = system->pieces[k];
   part->system.minimum = part->minimum;
   part->system.pieces = part->pieces;
   return true;
@@ -156,7 +157,8 @@ ut_capped_rate (const UtSystem *system, const double *power, double *rate)
 
   if (status == UT_POWER_OK)
     {
-      memcpy (groups, system->groups, system->n_groups * sizeof *groups);
+      for (size_t g = 0; g < system->n_groups; g++)
+        groups[g] = system->groups[g];
       part.system.groups = groups;
       for (size_t i = 0; i < system->n_unknowns; i++)
         if (!wants_less_than_limit (system, i, power)

@@ -38,6 +38,7 @@ compute_pair (UtGains *gains, guint terminal, guint cell)
   gains->computed_db[at] = gains->gain_db[at] = path.gain_db;
   gains->gain[at] = ut_ratio_from_db (path.gain_db);
   gains->wall_at_antenna[at] = path.wall_at_antenna;
+  gains->outside_range[at] = path.outside_range;
   gains->computed_pairs++;
 }
 
@@ -49,6 +50,7 @@ keep_pair (UtGains *gains, gsize at, const UtGains *previous, gsize before)
   gains->gain[at] = previous->computed_db[before] == previous->gain_db[before] ? previous->gain[before]
                                                                               : ut_ratio_from_db (gains->gain_db[at]);
   gains->wall_at_antenna[at] = previous->wall_at_antenna[before];
+  gains->outside_range[at] = previous->outside_range[before];
 }
 
 static void
@@ -104,6 +106,7 @@ ut_gains_new_cancellable (const UtPlan *plan, const UtGains *previous, GCancella
   gains->gain = g_new0 (double, n);
   gains->computed_db = g_new0 (double, n);
   gains->wall_at_antenna = g_new0 (guint8, n);
+  gains->outside_range = g_new0 (guint8, n);
   if (previous != NULL && !ut_wall_index_holds (previous->plan, plan))
     previous = NULL;
   gains->index = previous != NULL ? ut_wall_index_ref (previous->index) : ut_wall_index_new (plan);
@@ -137,10 +140,41 @@ gains_clear (gpointer data)
   g_free (gains->gain);
   g_free (gains->computed_db);
   g_free (gains->wall_at_antenna);
+  g_free (gains->outside_range);
 }
 
 void
 ut_gains_unref (UtGains *gains)
 {
   g_atomic_rc_box_release_full (gains, gains_clear);
+}
+
+char *
+ut_gains_range_warning (const UtGains *gains)
+{
+  const UtPlan *plan = gains->plan;
+  guint count = 0;
+  gsize first = 0;
+  UtPath path;
+
+  for (gsize at = (gsize) gains->n_terminals * gains->n_cells; at-- > 0;)
+    if (gains->outside_range[at] && gains->gain_db[at] == gains->computed_db[at])
+      {
+        count++;
+        first = at;
+      }
+  if (count == 0)
+    return NULL;
+  const UtCell *cell = ut_plan_cell (plan, (guint) (first % gains->n_cells));
+  const UtTerminal *terminal = ut_plan_terminal (plan, (guint) (first / gains->n_cells));
+  ut_path_compute (plan, gains->index, cell, terminal, &path);
+  g_autofree char *range = ut_path_range_text (plan, &path);
+  return g_strdup_printf ("the law %s; %u pair%s outside, the first %s, %s at %.1f m and %g GHz",
+                          range,
+                          count,
+                          count == 1 ? " lies" : "s lie",
+                          cell->radio.id,
+                          terminal->radio.id,
+                          path.distance_m,
+                          plan->carrier->frequency_mhz / 1e3);
 }

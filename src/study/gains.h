@@ -15,6 +15,7 @@ typedef struct
   double *gain;            /* the same, linear */
   double *computed_db;     /* the same before measured gains */
   guint8 *wall_at_antenna; /* the same layout: a wall passes through an antenna of the pair */
+  guint8 *outside_range;   /* the same layout: the pair lies outside what the base law was made for */
   guint computed_pairs;    /* how many were computed anew for this revision */
 } UtGains;
 
@@ -22,6 +23,9 @@ typedef struct
 UtGains *ut_gains_new (const UtPlan *plan, const UtGains *previous) G_GNUC_WARN_UNUSED_RESULT;
 /* The same for a thread: once cancelled it leaves the rest of the pairs at 0 and returns early; such gains are to be thrown away. */
 UtGains *ut_gains_new_cancellable (const UtPlan *plan, const UtGains *previous, GCancellable *cancellable) G_GNUC_WARN_UNUSED_RESULT;
+
+/* Which pairs lie outside what the base law was made for, in one line to be freed; NULL: none.  Pairs with a measured gain don't count. */
+char *ut_gains_range_warning (const UtGains *gains);
 
 UtGains *ut_gains_ref (UtGains *gains);
 void ut_gains_unref (UtGains *gains);

@@ -3,6 +3,7 @@
 #include <math.h>
 #include <string.h>
 
+#include "base-law.h"
 #include "decibel.h"
 #include "noise.h"
 
@@ -35,12 +36,7 @@ ut_radio_limit_mw (const UtPlan *plan, const UtRadio *radio)
   double limit_dbm = radio->power_max_dbm;
 
   if (!isnan (plan->carrier->eirp_limit_dbm))
-    {
-      int antenna = ut_plan_find_antenna (plan, radio->antenna);
-      double gain_dbi = antenna < 0 ? 0 : ut_plan_antenna (plan, (guint) antenna)->gain_dbi;
-
-      limit_dbm = MIN (limit_dbm, plan->carrier->eirp_limit_dbm - gain_dbi + radio->feeder_loss_db);
-    }
+    limit_dbm = MIN (limit_dbm, plan->carrier->eirp_limit_dbm - ut_radio_peak_dbi (plan, radio) + radio->feeder_loss_db);
   return ut_mw_from_dbm (limit_dbm);
 }
 
@@ -149,7 +145,7 @@ links_alloc (const UtGains *gains, UtDirection direction)
   links->processing_gain = links->simultaneous ? ut_ratio_from_db (plan->carrier->processing_gain_db) : 1;
   links->links = g_array_new (FALSE, FALSE, sizeof (UtLink));
   links->idle = g_new0 (gboolean, gains->n_cells);
-  links->coupling = g_new (double, (gsize) gains->n_cells * gains->n_cells);
+  links->coupling = g_new (double, MAX ((gsize) gains->n_cells * gains->n_cells, 1));
   return links;
 }
 

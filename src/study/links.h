@@ -143,5 +143,9 @@ gboolean ut_links_fewest_dropped (const UtLinks *links, GCancellable *cancellabl
  * continuous powers; NAN where no change of it helps. Every link must have a cell.  reserve_db: one of each link; unset once cancelled. */
 void ut_links_reserves_db (const UtLinks *links, GCancellable *cancellable, double *reserve_db);
 
+/* The chance (0..1) that a link keeps its SINR target at the powers that gave it this margin and `heard` (of UtInterference), every path shadowed by the plan's
+ * shadowing_db; NAN where that is 0. */
+double ut_links_chance (const UtLinks *links, guint index, const GArray *heard, double margin_db);
+
 /* Who disturbs link `index` at these powers: appended to `interference` (of UtInterference), strongest first, nothing that is 0. */
 void ut_links_interference (const UtLinks *links, const UtPowers *powers, guint index, GArray *interference);

@@ -14,6 +14,10 @@ typedef struct
   double feeders_db, body_db;
   gboolean measured;        /* gain_db is the plan's measured one */
   gboolean wall_at_antenna; /* a wall passes through one of the two antennas */
+  gboolean nlos;            /* the law's row without line of sight is the one taken */
+  gboolean law_holds_walls; /* the base loss holds the walls already: crossings count 0 */
+  double lowest_hz, highest_hz, nearest_m, farthest_m; /* what that row was made for */
+  gboolean outside_range;
   double gain_db;
 } UtPath;
 
@@ -24,6 +28,9 @@ void ut_path_compute (const UtPlan *plan, const UtWallIndex *index, const UtCell
 /* Everything about the pair, crossings and measured gain included; indices of the plan. ut_path_clear () afterwards. */
 void ut_path_trace (const UtPlan *plan, const UtWallIndex *index, guint cell, guint terminal, UtPath *path);
 void ut_path_clear (UtPath *path);
+
+/* What the row of the law that the pair takes was made for, to be freed: "site-general (nlos) is made for ...". */
+char *ut_path_range_text (const UtPlan *plan, const UtPath *path);
 
 /* The plan's measured gain of the pair in dB, NAN where there is none. */
 double ut_measured_gain_db (const UtPlan *plan, const char *cell, const char *terminal);

@@ -3,8 +3,8 @@
 
 #include <math.h>
 
+#include "base-law.h"
 #include "json-text.h"
-#include "laws.h"
 #include "table.h"
 
 static void
@@ -22,7 +22,7 @@ add_text (JsonBuilder *builder, const char *key, const char *text)
 }
 
 static void
-add_crossing (JsonBuilder *builder, const UtPlan *plan, const UtCrossing *crossing)
+add_crossing (JsonBuilder *builder, const UtPlan *plan, const UtCrossing *crossing, gboolean in_law)
 {
   const UtStorey *storey = ut_plan_storey (plan, crossing->storey);
 
@@ -43,6 +43,8 @@ add_crossing (JsonBuilder *builder, const UtPlan *plan, const UtCrossing *crossi
       add_number (builder, "loss_min_db", crossing->loss_min_db);
       add_number (builder, "loss_max_db", crossing->loss_max_db);
     }
+  if (in_law)
+    add_text (builder, "note", "counted by the base law");
   json_builder_end_object (builder);
 }
 
@@ -53,7 +55,7 @@ add_crossings (JsonBuilder *builder, const char *key, const UtPlan *plan, const 
   json_builder_begin_array (builder);
   for (guint i = 0; i < path->crossings->len; i++)
     if (g_array_index (path->crossings, UtCrossing, i).kind == kind)
-      add_crossing (builder, plan, &g_array_index (path->crossings, UtCrossing, i));
+      add_crossing (builder, plan, &g_array_index (path->crossings, UtCrossing, i), path->law_holds_walls);
   json_builder_end_array (builder);
 }
 
@@ -66,6 +68,11 @@ ut_report_path_json (const UtPlan *plan, guint cell, guint terminal, const UtPat
   add_text (builder, "cell", ut_plan_cell (plan, cell)->radio.id);
   add_text (builder, "terminal", ut_plan_terminal (plan, terminal)->radio.id);
   add_number (builder, "distance_m", path->distance_m);
+  add_text (builder, "law", ut_law_name (ut_base_law (plan->propagation).kind));
+  json_builder_set_member_name (builder, "nlos");
+  json_builder_add_boolean_value (builder, path->nlos);
+  json_builder_set_member_name (builder, "outside_range");
+  json_builder_add_boolean_value (builder, path->outside_range);
   add_number (builder, "base_loss_db", path->base_loss_db);
   add_crossings (builder, "walls", plan, path, UT_CROSSING_WALL);
   add_crossings (builder, "floors", plan, path, UT_CROSSING_FLOOR);
@@ -92,7 +99,7 @@ add_row (UtTable *table, char *what, double db, char *note)
 }
 
 static void
-add_crossing_row (UtTable *table, const UtPlan *plan, const UtCrossing *crossing)
+add_crossing_row (UtTable *table, const UtPlan *plan, const UtCrossing *crossing, gboolean in_law)
 {
   const UtStorey *storey = ut_plan_storey (plan, crossing->storey);
   const UtConstruction *construction = ut_plan_construction (plan, crossing->construction);
@@ -110,17 +117,19 @@ add_crossing_row (UtTable *table, const UtPlan *plan, const UtCrossing *crossing
                                     ((const UtWall *) storey->walls->pdata[crossing->wall])->id,
                                     storey->id);
 
-  add_row (table,
-           what,
-           -crossing->loss_db,
-           g_strdup_printf ("%s at %s° from the normal (%s%s)", construction->name, incidence, source, spread));
+  if (in_law)
+    add_row (table, what, 0, g_strdup_printf ("%s: counted by the base law", construction->name));
+  else
+    add_row (table,
+             what,
+             -crossing->loss_db,
+             g_strdup_printf ("%s at %s° from the normal (%s%s)", construction->name, incidence, source, spread));
 }
 
 char *
 ut_report_path_text (const UtPlan *plan, guint cell, guint terminal, const UtPath *path)
 {
   static const char *const header[] = { "What", ">dB", "How", NULL };
-  static const UtLawKind laws[] = { [UT_BASE_FREE_SPACE] = UT_LAW_FREE_SPACE, [UT_BASE_LOG_DISTANCE] = UT_LAW_LOG_DISTANCE };
   g_autoptr (UtTable) table = ut_table_new (header);
   GString *out = g_string_new (NULL);
   g_autofree char *distance = ut_report_figure (path->distance_m, 2);
@@ -131,12 +140,13 @@ ut_report_path_text (const UtPlan *plan, guint cell, guint terminal, const UtPat
                           ut_plan_cell (plan, cell)->radio.id,
                           ut_plan_terminal (plan, terminal)->radio.id,
                           distance);
-  add_row (table, g_strdup ("Base loss"), -path->base_loss_db, g_strdup (ut_law_source (laws[plan->propagation->law])));
+  add_row (table, g_strdup ("Base loss"), -path->base_loss_db, g_strdup_printf ("%s%s", ut_law_source (ut_base_law (plan->propagation).kind),
+                                                                                  path->nlos ? ", without line of sight" : ""));
   for (guint i = 0; i < path->crossings->len; i++)
     {
       const UtCrossing *crossing = &g_array_index (path->crossings, UtCrossing, i);
 
-      add_crossing_row (table, plan, crossing);
+      add_crossing_row (table, plan, crossing, path->law_holds_walls);
       crossings_db += crossing->loss_db;
     }
   if (crossings_db > path->crossings_db)

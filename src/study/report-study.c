@@ -36,6 +36,9 @@ add_transmitters (JsonBuilder *builder, const UtStudy *study)
       ut_report_add_figure (builder, "power_min_dbm", sender->power_min_dbm);
       ut_report_add_figure (builder, "power_max_dbm", sender->power_max_dbm);
       ut_report_add_figure (builder, "eirp_dbm", sender->eirp_dbm);
+      ut_report_add_figure (builder, "element_dbm", sender->element_dbm);
+      ut_report_add_figure (builder, "compliance_distance_m", sender->compliance_m);
+      ut_report_add_text (builder, "compliance_limit", sender->compliance_limit);
       json_builder_end_object (builder);
     }
   json_builder_end_array (builder);
@@ -80,6 +83,7 @@ add_links (JsonBuilder *builder, const UtStudy *study)
       ut_report_add_figure (builder, "interference_dbm", link->interference_dbm);
       add_interferers (builder, link);
       ut_report_add_figure (builder, "reserve_db", link->reserve_db);
+      ut_report_add_figure (builder, "probability", link->chance);
       json_builder_set_member_name (builder, "dropped");
       json_builder_add_boolean_value (builder, link->dropped);
       json_builder_end_object (builder);
@@ -150,7 +154,7 @@ ut_report_study_csv (const UtStudy *study)
 {
   static const char *const header[] = { "terminal",   "cell",       "power_dbm",        "target_db",  "level_target_dbm",
                                         "sinr_db",    "margin_db",  "signal_dbm",       "noise_dbm",  "interference_dbm",
-                                        "reserve_db", "dropped",    NULL };
+                                        "reserve_db", "dropped",    "probability", NULL };
   g_autoptr (UtTable) table = ut_table_new (header);
   GString *out = g_string_new (NULL);
 
@@ -165,6 +169,7 @@ ut_report_study_csv (const UtStudy *study)
       for (guint k = 0; k < G_N_ELEMENTS (figures); k++)
         ut_table_add (table, number_or_empty (figures[k]));
       ut_table_add (table, g_strdup (link->dropped ? "true" : "false"));
+      ut_table_add (table, number_or_empty (link->chance));
     }
   ut_table_csv (table, out);
   return g_string_free (out, FALSE);
@@ -173,7 +178,8 @@ ut_report_study_csv (const UtStudy *study)
 static void
 append_transmitters (const UtStudy *study, GString *out)
 {
-  static const char *const header[] = { "Sends", ">Power dBm", ">least", ">most", ">EIRP dBm", "Name", NULL };
+  gboolean elements = study->gains->plan->carrier->resource_blocks > 0;
+  const char *const header[] = { "Sends", ">Power dBm", ">least", ">most", ">EIRP dBm", ">Keep off m", elements ? ">Element dBm" : "Name", elements ? "Name" : NULL, NULL };
   g_autoptr (UtTable) table = ut_table_new (header);
 
   for (guint i = 0; i < study->transmitters->len; i++)
@@ -186,9 +192,13 @@ append_transmitters (const UtStudy *study, GString *out)
       ut_table_add (table, ut_report_figure (sender->power_min_dbm, 1));
       ut_table_add (table, ut_report_figure (sender->power_max_dbm, 1));
       ut_table_add (table, ut_report_figure (sender->eirp_dbm, 2));
+      ut_table_add (table, ut_report_figure (sender->compliance_m, 2));
+      if (elements)
+        ut_table_add (table, ut_report_figure (sender->element_dbm, 2));
       ut_table_add (table, g_strconcat (radio->name, sender->idle ? " (serves nobody)" : "", NULL));
     }
   ut_table_text (table, out);
+  g_string_append (out, "Keep off: a screening estimate of the general public's exposure distance at full power; local rules take precedence.\n");
 }
 
 static char *
@@ -204,8 +214,10 @@ strongest_interferer (const UtLinkAnswer *link)
 static void
 append_links (const UtStudy *study, GString *out)
 {
-  static const char *const header[] = { "Terminal", "Cell",        ">Power dBm", ">Target dB",         ">SINR dB",  ">Margin dB", ">Signal dBm",
-                                        ">Noise dBm", ">Interf. dBm", "Loudest interferer", "Name", NULL };
+  gboolean chances = study->gains->plan->propagation->shadowing_db > 0;
+  const char *const header[] = { "Terminal",     "Cell",         ">Power dBm",  ">Target dB",   ">SINR dB",           ">Margin dB",
+                                 ">Reserve dB",  ">Signal dBm",  ">Noise dBm",  ">Interf. dBm", "Loudest interferer", chances ? ">Chance %" : "Name",
+                                 chances ? "Name" : NULL, NULL };
   g_autoptr (UtTable) table = ut_table_new (header);
 
   for (guint i = 0; i < study->links->len; i++)
@@ -219,13 +231,20 @@ append_links (const UtStudy *study, GString *out)
       ut_table_add (table, ut_report_figure (link->target_db, 1));
       ut_table_add (table, ut_report_figure (link->sinr_db, 2));
       ut_table_add (table, ut_report_figure (link->margin_db, 2));
+      ut_table_add (table, ut_report_figure (link->reserve_db, 2));
       ut_table_add (table, ut_report_figure (link->signal_dbm, 1));
       ut_table_add (table, ut_report_figure (link->noise_dbm, 1));
       ut_table_add (table, ut_report_figure (link->interference_dbm, 1));
       ut_table_add (table, strongest_interferer (link));
+      if (chances)
+        ut_table_add (table, ut_report_figure (100 * link->chance, 1));
       ut_table_add (table, g_strdup (terminal->name));
     }
   ut_table_text (table, out);
+  if (chances)
+    g_string_append_printf (out,
+                            "Chance: to keep the SINR target at these powers when every path scatters by %g dB about its median; to first order.\n",
+                            study->gains->plan->propagation->shadowing_db);
 }
 
 char *

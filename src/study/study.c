@@ -3,13 +3,16 @@
 #include <math.h>
 #include <string.h>
 
+#include "base-law.h"
 #include "decibel.h"
+#include "exposure.h"
 #include "headroom.h"
 #include "least.h"
 #include "links.h"
 #include "perron.h"
 #include "plan-check.h"
 #include "plan-read.h"
+#include "rate.h"
 #include "remedies.h"
 #include "verdict.h"
 
@@ -293,14 +296,13 @@ clear_link_answer (gpointer data)
   g_array_unref (((UtLinkAnswer *) data)->interferers);
 }
 
+/* Interferers by name; returns their sum. */
 static double
-name_interferers (const UtLinks *links, const UtPowers *powers, guint index, GArray *interferers)
+name_interferers (const UtLinks *links, const GArray *heard, GArray *interferers)
 {
   const UtPlan *plan = links->gains->plan;
-  g_autoptr (GArray) heard = g_array_new (FALSE, FALSE, sizeof (UtInterference));
   double sum_mw = 0;
 
-  ut_links_interference (links, powers, index, heard);
   for (guint i = 0; i < heard->len; i++)
     {
       const UtInterference *one = &g_array_index (heard, UtInterference, i);
@@ -318,10 +320,13 @@ name_interferers (const UtLinks *links, const UtPowers *powers, guint index, GAr
 
 /* What a link has at these powers. */
 static void
-fill_figures (const UtLinks *links, const UtPowers *powers, guint index, UtLinkAnswer *answer)
+fill_figures (const UtLinks *links, const UtPowers *powers, guint index, gboolean chances, UtLinkAnswer *answer)
 {
   const UtLink *link = ut_links_link (links, index);
-  double interference_mw = name_interferers (links, powers, index, answer->interferers);
+  g_autoptr (GArray) heard = g_array_new (FALSE, FALSE, sizeof (UtInterference));
+
+  ut_links_interference (links, powers, index, heard);
+  double interference_mw = name_interferers (links, heard, answer->interferers);
   double signal_mw = powers->link_mw[index] * link->gain;
 
   answer->power_dbm = dbm_or_nan (powers->link_mw[index]);
@@ -330,6 +335,8 @@ fill_figures (const UtLinks *links, const UtPowers *powers, guint index, UtLinkA
   answer->interference_dbm = dbm_or_nan (interference_mw);
   answer->sinr_db = dbm_or_nan (links->processing_gain * signal_mw / (interference_mw + link->noise_mw));
   answer->margin_db = answer->sinr_db - answer->target_db;
+  if (chances)
+    answer->chance = ut_links_chance (links, index, heard, answer->margin_db);
 }
 
 /* kept: the links that are not dropped, in the same order; index: the place among them, used where the link is kept and has a cell. */
@@ -348,12 +355,13 @@ answer_link (UtStudy *study, const UtLink *link, gboolean dropped, const UtLinks
     .noise_dbm = NAN,
     .interference_dbm = NAN,
     .reserve_db = NAN,
+    .chance = NAN,
     .dropped = dropped,
     .interferers = g_array_new (FALSE, FALSE, sizeof (UtInterferer)),
   };
 
   if (!dropped && link->cell >= 0)
-    fill_figures (kept, powers, index, &answer);
+    fill_figures (kept, powers, index, study->question.chances, &answer);
   g_array_append_val (study->links, answer);
 }
 
@@ -362,7 +370,6 @@ add_transmitter (UtStudy *study, gboolean is_cell, guint index, gboolean idle, d
 {
   const UtPlan *plan = study->gains->plan;
   const UtRadio *radio = is_cell ? &ut_plan_cell (plan, index)->radio : &ut_plan_terminal (plan, index)->radio;
-  int antenna = ut_plan_find_antenna (plan, radio->antenna);
   UtTransmitterAnswer answer = {
     .is_cell = is_cell,
     .index = index,
@@ -370,10 +377,17 @@ add_transmitter (UtStudy *study, gboolean is_cell, guint index, gboolean idle, d
     .power_dbm = dbm_or_nan (mw),
     .power_min_dbm = radio->power_min_dbm,
     .power_max_dbm = radio->power_max_dbm,
+    .element_dbm = NAN,
+    .compliance_m = NAN,
   };
+  double peak_db = ut_radio_peak_dbi (plan, radio) - radio->feeder_loss_db;
+  UtExposureLimit governing;
 
-  answer.eirp_dbm = answer.power_dbm + (antenna < 0 ? 0 : ut_plan_antenna (plan, (guint) antenna)->gain_dbi)
-                    - radio->feeder_loss_db;
+  answer.eirp_dbm = answer.power_dbm + peak_db;
+  if (plan->carrier->resource_blocks > 0)
+    answer.element_dbm = ut_element_dbm (answer.power_dbm, (unsigned) plan->carrier->resource_blocks);
+  if (ut_compliance_distance_m (radio->power_max_dbm + peak_db, plan->carrier->frequency_mhz * 1e6, &answer.compliance_m, &governing) == UT_RADIO_OK)
+    answer.compliance_limit = ut_exposure_limit_name (governing);
   g_array_append_val (study->transmitters, answer);
 }
 
@@ -454,8 +468,12 @@ warn_of_plan (UtStudy *study)
       const UtFault *fault = faults->pdata[i];
       warn (study, "%s: %s", fault->path, fault->message);
     }
+  g_autofree char *range = ut_gains_range_warning (gains);
+
   for (guint i = 0; i < materials->len; i++)
     warn (study, "%s", (const char *) materials->pdata[i]);
+  if (range != NULL)
+    warn (study, "%s", range);
   for (guint t = 0; t < gains->n_terminals; t++)
     for (guint c = 0; c < gains->n_cells; c++)
       if (gains->wall_at_antenna[ut_gains_at (gains, t, c)])
@@ -623,6 +641,12 @@ void
 ut_study_unref (UtStudy *study)
 {
   g_atomic_rc_box_release_full (study, study_clear);
+}
+
+char *
+ut_study_law_text (const UtStudy *study)
+{
+  return ut_base_law_text (study->gains->plan->propagation);
 }
 
 gboolean

@@ -29,6 +29,7 @@ typedef struct
   UtAim aim;
   double hold_db;    /* >= 0: kept in hand on every target when powers are chosen */
   gboolean reserves; /* compute the reserve of every link */
+  gboolean chances;  /* compute the chance of every link, where the plan has shadowing */
   gboolean remedies; /* look for what would heal a plan that cannot be met */
 } UtQuestion;
 
@@ -53,6 +54,7 @@ typedef struct
   double signal_dbm, noise_dbm, interference_dbm;
   GArray *interferers; /* of UtInterferer, strongest first */
   double reserve_db;
+  double chance;       /* 0..1, to keep the SINR target at these powers under shadowing */
   gboolean dropped;
 } UtLinkAnswer;
 
@@ -62,6 +64,9 @@ typedef struct
   guint index;      /* in the plan */
   gboolean idle;
   double power_dbm, power_min_dbm, power_max_dbm, eirp_dbm;
+  double element_dbm;          /* power per resource element; NAN: the plan does not count them */
+  double compliance_m;         /* screening distance at power_max_dbm and the antenna's peak; NAN: no limit is stated for the frequency */
+  const char *compliance_limit; /* which limit governs it; NULL beside NAN */
 } UtTransmitterAnswer;
 
 /* Of what sets the headroom, the part that one transmitter has at one link: 1 dB less on that path moves it by about `part` dB. */
@@ -130,6 +135,9 @@ UtStudy *ut_study_new_cancellable (const UtPlan *plan,
 UtStudy *ut_study_ref (UtStudy *study);
 void ut_study_unref (UtStudy *study);
 G_DEFINE_AUTOPTR_CLEANUP_FUNC (UtStudy, ut_study_unref)
+
+/* The base law and its parameters in a few words, to be freed. */
+char *ut_study_law_text (const UtStudy *study);
 
 static inline const UtLinkAnswer *
 ut_study_link (const UtStudy *study, guint index)

@@ -3,7 +3,9 @@
 #include <math.h>
 
 #include "material.h"
+#include "slab-fit.h"
 #include "slab.h"
+#include "wall-grid.h"
 
 /* Points closer to a line than this count as on it. Far below any drawing accuracy, far above rounding at site scale. */
 #define ON_LINE_M 1e-9
@@ -11,8 +13,10 @@
 typedef struct
 {
   double loss_db; /* NAN: by layers */
+  gboolean heavy;
   UtSlab slab;
   UtSlabLayer *layers;
+  UtSlabFit *wall_fit, *floor_fit; /* of the averaged loss; NULL: evaluated each time */
 } Slab;
 
 typedef struct
@@ -21,6 +25,12 @@ typedef struct
   int construction; /* -1: not shut, nothing is crossed */
   guint index;
 } Opening;
+
+/* From so many pairs on the loss of averaged slabs is fitted once, instead of averaged at each crossing. */
+#define PAIRS_TO_FIT 1000
+
+/* From so many pieces on the grid is quicker than looking at all. */
+#define PIECES_FOR_GRID 48
 
 /* One piece of a wall's polyline.  What the crossing test needs for every ray is in the arrays of the index. */
 typedef struct
@@ -47,11 +57,27 @@ struct _UtWallIndex
   guint n_slabs;
   Slab *slabs;                      /* by construction */
   double *start_x, *start_y, *end_x, *end_y; /* of the pieces */
+  UtWallGrid *grid;                 /* NULL: few pieces */
   GArray *pieces;                   /* of Piece */
   GArray *openings;                 /* of Opening */
   GArray *floors;                   /* of Floor */
   GPtrArray *warnings;
 };
+
+/* A construction that says no class is heavy when its layers come to more than this. */
+#define HEAVY_MM 100
+
+static gboolean
+is_heavy (const UtConstruction *construction)
+{
+  double thickness_mm = 0;
+
+  if (construction->wall_class != NULL)
+    return g_str_equal (construction->wall_class, "heavy");
+  for (guint i = 0; i < construction->layers->len; i++)
+    thickness_mm += ((const UtConstructionLayer *) construction->layers->pdata[i])->thickness_mm;
+  return thickness_mm > HEAVY_MM;
+}
 
 /* Prepares the slab of one construction. */
 static void
@@ -60,6 +86,7 @@ slab_init (Slab *slab, const UtConstruction *construction, double frequency_hz)
   guint n = construction->layers->len;
 
   slab->loss_db = construction->loss_db;
+  slab->heavy = is_heavy (construction);
   if (n == 0)
     return;
   g_autofree UtLayer *layers = g_new (UtLayer, n);
@@ -220,6 +247,26 @@ add_warnings (UtWallIndex *index, const UtPlan *plan)
     warn_of_range (index, ut_plan_construction (plan, g_array_index (index->floors, Floor, i).construction), told);
 }
 
+static UtSlabFit *
+fit_new (const UtSlab *slab, double te_share)
+{
+  UtSlabFit *fit = g_new0 (UtSlabFit, 1);
+
+  ut_slab_fit (slab, te_share, fit);
+  if (fit->n == 0)
+    g_clear_pointer (&fit, g_free);
+  return fit;
+}
+
+static void
+fit_slab (UtWallIndex *index, Slab *slab)
+{
+  if (slab->layers == NULL || !isnan (slab->loss_db))
+    return;
+  slab->wall_fit = fit_new (&slab->slab, index->te_share_wall);
+  slab->floor_fit = fit_new (&slab->slab, index->te_share_floor);
+}
+
 UtWallIndex *
 ut_wall_index_new (const UtPlan *plan)
 {
@@ -247,6 +294,11 @@ ut_wall_index_new (const UtPlan *plan)
   index->warnings = g_ptr_array_new_with_free_func (g_free);
   add_storeys (index, plan);
   add_warnings (index, plan);
+  if (index->pieces->len >= PIECES_FOR_GRID)
+    index->grid = ut_wall_grid_new (index->pieces->len, index->start_x, index->start_y, index->end_x, index->end_y);
+  if (index->averaged && (gsize) plan->cells->len * plan->terminals->len >= PAIRS_TO_FIT)
+    for (guint i = 0; i < index->n_slabs; i++)
+      fit_slab (index, &index->slabs[i]);
   return index;
 }
 
@@ -263,7 +315,12 @@ ut_wall_index_unref (UtWallIndex *index)
   if (!g_atomic_ref_count_dec (&index->refs))
     return;
   for (guint i = 0; i < index->n_slabs; i++)
-    g_free (index->slabs[i].layers);
+    {
+      g_free (index->slabs[i].layers);
+      g_free (index->slabs[i].wall_fit);
+      g_free (index->slabs[i].floor_fit);
+    }
+  g_clear_pointer (&index->grid, ut_wall_grid_free);
   g_free (index->slabs);
   g_free (index->start_x);
   g_free (index->start_y);
@@ -308,15 +365,29 @@ ut_wall_index_n_pieces (const UtWallIndex *index)
   return index->pieces->len;
 }
 
+typedef struct
+{
+  const double *from_m, *to_m;
+  double dx, dy, dz;
+  double ground_m; /* length of the plan projection */
+  double length_m;
+  gboolean spreads; /* loss_min_db and loss_max_db are wanted too */
+  UtCrossingVisitor visitor;
+  void *user;
+} Ray;
+
 /* Fills in the loss of a crossing whose construction and angle are known. */
 static void
-set_loss (const UtWallIndex *index, UtCrossing *crossing, double cos_incidence, double te_share)
+set_loss (const UtWallIndex *index, const Ray *ray, UtCrossing *crossing, double cos_incidence, double te_share)
 {
   const Slab *slab = &index->slabs[crossing->construction];
+  const UtSlabFit *fit = crossing->kind == UT_CROSSING_WALL ? slab->wall_fit : slab->floor_fit;
   double incidence_rad = acos (CLAMP (cos_incidence, 0, 1));
 
   crossing->incidence_deg = incidence_rad * (180 / G_PI);
-  if (isnan (slab->loss_db))
+  if (isnan (slab->loss_db) && fit != NULL && !ray->spreads)
+    crossing->loss_db = crossing->loss_min_db = crossing->loss_max_db = ut_slab_fit_loss_db (fit, incidence_rad);
+  else if (isnan (slab->loss_db))
     {
       UtSlabLoss loss;
       UtRadioStatus status = ut_slab_evaluate (&slab->slab, incidence_rad, te_share, index->averaged, &loss);
@@ -329,17 +400,8 @@ set_loss (const UtWallIndex *index, UtCrossing *crossing, double cos_incidence, 
   else
     crossing->loss_db = crossing->loss_min_db = crossing->loss_max_db = slab->loss_db;
   crossing->loss_db = CLAMP (crossing->loss_db, 0, index->loss_limit_db);
+  crossing->heavy = slab->heavy;
 }
-
-typedef struct
-{
-  const double *from_m, *to_m;
-  double dx, dy, dz;
-  double ground_m; /* length of the plan projection */
-  double length_m;
-  UtCrossingVisitor visitor;
-  void *user;
-} Ray;
 
 /* What stands at this spot of the piece: *construction is -1 for an opening that is not shut. */
 static void
@@ -371,7 +433,8 @@ visit_piece (const UtWallIndex *index, const Ray *ray, guint i, double start_sid
   double to_side = (px * (ray->to_m[1] - index->start_y[i]) - py * (ray->to_m[0] - index->start_x[i])) / piece->length_m;
   gboolean from_on = fabs (from_side) <= ON_LINE_M, to_on = fabs (to_side) <= ON_LINE_M;
 
-  if (!from_on && !to_on && (from_side > 0) == (to_side > 0))
+  /* Both ends on its line: along the wall, or along its line somewhere else. */
+  if ((from_on && to_on) || (!from_on && !to_on && (from_side > 0) == (to_side > 0)))
     return;
   double along = from_on ? 0 : to_on ? 1 : from_side / (from_side - to_side);
   double z_m = ray->from_m[2] + along * ray->dz;
@@ -393,8 +456,23 @@ visit_piece (const UtWallIndex *index, const Ray *ray, guint i, double start_sid
     *at_end = TRUE;
   crossing.construction = (guint) construction;
   /* The wall's normal is horizontal. */
-  set_loss (index, &crossing, fabs (px * ray->dy - py * ray->dx) / (piece->length_m * ray->length_m), index->te_share_wall);
+  set_loss (index, ray, &crossing, fabs (px * ray->dy - py * ray->dx) / (piece->length_m * ray->length_m), index->te_share_wall);
   ray->visitor (&crossing, ray->user);
+}
+
+/* Pieces up to 64 times this need no memory of their own for a ray. */
+#define WORDS_ON_STACK 128
+
+static inline void
+test_piece (const UtWallIndex *index, const Ray *ray, guint i, double near, gboolean *at_end)
+{
+  /* Which side of the ray's line each end of the piece is on; a shared corner gets the same figure in both pieces. */
+  double start = ray->dx * (index->start_y[i] - ray->from_m[1]) - ray->dy * (index->start_x[i] - ray->from_m[0]);
+  double end = ray->dx * (index->end_y[i] - ray->from_m[1]) - ray->dy * (index->end_x[i] - ray->from_m[0]);
+
+  if ((start > near && end > near) || (start < -near && end < -near) || fabs (end) <= near)
+    return;
+  visit_piece (index, ray, i, fabs (start) <= near ? 0 : start, end, at_end);
 }
 
 static gboolean
@@ -405,16 +483,22 @@ visit_walls (const UtWallIndex *index, const Ray *ray)
 
   if (ray->ground_m <= ON_LINE_M)
     return FALSE; /* straight up or down: along every wall, across none */
-  for (guint i = 0; i < index->pieces->len; i++)
+  if (index->grid == NULL)
     {
-      /* Which side of the ray's line each end of the piece is on; a shared corner gets the same figure in both pieces. */
-      double start = ray->dx * (index->start_y[i] - ray->from_m[1]) - ray->dy * (index->start_x[i] - ray->from_m[0]);
-      double end = ray->dx * (index->end_y[i] - ray->from_m[1]) - ray->dy * (index->end_x[i] - ray->from_m[0]);
-
-      if ((start > near && end > near) || (start < -near && end < -near) || fabs (end) <= near)
-        continue;
-      visit_piece (index, ray, i, fabs (start) <= near ? 0 : start, end, &at_end);
+      for (guint i = 0; i < index->pieces->len; i++)
+        test_piece (index, ray, i, near, &at_end);
+      return at_end;
     }
+  guint n_words = ut_wall_grid_n_words (index->grid);
+  guint64 on_stack[WORDS_ON_STACK] = { 0 };
+  g_autofree guint64 *on_heap = n_words > WORDS_ON_STACK ? g_new0 (guint64, n_words) : NULL;
+  guint64 *bits = on_heap != NULL ? on_heap : on_stack;
+
+  /* By bits, so that pieces come in their own order, each once: sums are the same as without the grid, to the last digit. */
+  ut_wall_grid_gather (index->grid, ray->from_m[0], ray->from_m[1], ray->to_m[0], ray->to_m[1], bits);
+  for (guint word = 0; word < n_words; word++)
+    for (guint64 rest = bits[word]; rest != 0; rest &= rest - 1)
+      test_piece (index, ray, 64 * word + (guint) __builtin_ctzll (rest), near, &at_end);
   return at_end;
 }
 
@@ -432,7 +516,7 @@ visit_floors (const UtWallIndex *index, const Ray *ray)
         continue;
       crossing.construction = floor->construction;
       crossing.along = (floor->elevation_m - ray->from_m[2]) / ray->dz;
-      set_loss (index, &crossing, fabs (ray->dz) / ray->length_m, index->te_share_floor);
+      set_loss (index, ray, &crossing, fabs (ray->dz) / ray->length_m, index->te_share_floor);
       ray->visitor (&crossing, ray->user);
     }
 }
@@ -441,10 +525,12 @@ gboolean
 ut_wall_index_walk (const UtWallIndex *index,
                     const double from_m[3],
                     const double to_m[3],
+                    gboolean spreads,
                     UtCrossingVisitor visitor,
                     void *user)
 {
   Ray ray = {
+    .spreads = spreads,
     .from_m = from_m,
     .to_m = to_m,
     .dx = to_m[0] - from_m[0],

@@ -16,6 +16,7 @@ typedef struct
   guint wall;         /* index in its storey; floors: 0 */
   int opening;        /* index in its wall of the shut opening that is crossed; -1: the wall itself */
   guint construction; /* index in the plan: what is crossed */
+  gboolean heavy;     /* of the two classes of walls that the multi-wall law knows */
   double along;       /* 0..1 from the ray's start to its end */
   double incidence_deg;
   double loss_db;                  /* held between 0 and the plan's limit for one crossing */
@@ -37,10 +38,11 @@ typedef void (*UtCrossingVisitor) (const UtCrossing *crossing, void *user);
 
 /* Visits what the straight ray from -> to (x, y, z in metres) crosses, in no particular order.  The ray's ends belong to
  * it.  A wall piece counts with its start and without its end, so that a corner of one polyline counts once; a ray along a
- * wall does not cross it (both within a nanometre).  Returns TRUE when a wall passes through one of the ends. */
+ * wall does not cross it (both within a nanometre).  spreads: loss_min_db and loss_max_db of averaged slabs are wanted.  Returns TRUE when a wall passes through one of the ends. */
 gboolean ut_wall_index_walk (const UtWallIndex *index,
                              const double from_m[3],
                              const double to_m[3],
+                             gboolean spreads,
                              UtCrossingVisitor visitor,
                              void *user);
 

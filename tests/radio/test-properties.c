@@ -4,10 +4,13 @@
 #include <glib.h>
 
 #include "antenna.h"
+#include "exposure.h"
 #include "decibel.h"
 #include "laws.h"
 #include "material.h"
 #include "noise.h"
+#include "rate.h"
+#include "slab-fit.h"
 #include "slab.h"
 
 #define UNTOUCHED 12345.5
@@ -310,6 +313,171 @@ test_noise_refusals (void)
   g_assert_cmpfloat (noise, ==, UNTOUCHED);
 }
 
+#define RAD_PER_DEG (G_PI / 180)
+
+/* ---- antennas, rates and fits ---- */
+
+static double
+dipole_dbi (double elevation_rad)
+{
+  const UtAntennaShape shape = { .pattern = UT_PATTERN_DIPOLE };
+  double gain_dbi = NAN;
+
+  g_assert_cmpint (ut_antenna_gain_dbi (&shape, 77, 30, (double[]){ 3 * cos (elevation_rad), 0, 3 * sin (elevation_rad) }, &gain_dbi), ==, UT_RADIO_OK);
+  return gain_dbi;
+}
+
+/* What a lossless antenna radiates in all directions together is what it is fed: the mean gain over the sphere is 1.  The half-wave dipole's
+ * half-power width is 78 degrees (any handbook of antennas; from memory). */
+static void
+test_dipole (void)
+{
+  const int n = 20000;
+  double sum = 0;
+
+  for (int k = 0; k < n; k++)
+    sum += pow (10, dipole_dbi (asin (-1 + (2 * k + 1.0) / n)) / 10) / n;
+  g_assert_cmpfloat_with_epsilon (sum, 1, 2e-3);
+  g_assert_cmpfloat (dipole_dbi (0), ==, UT_DIPOLE_DBI);
+  g_assert_cmpfloat_with_epsilon (dipole_dbi (39 * RAD_PER_DEG), UT_DIPOLE_DBI - 3.01, 0.02);
+  g_assert_cmpfloat_with_epsilon (dipole_dbi (90 * RAD_PER_DEG), UT_DIPOLE_DBI - 30, 1e-9);
+}
+
+/* Cuts taken of a sector give the sector back. */
+static void
+test_cuts (void)
+{
+  const UtAntennaShape sector = { .pattern = UT_PATTERN_SECTOR, .gain_dbi = 8, .beamwidth_h_deg = 65, .beamwidth_v_deg = 30 };
+  double horizontal[720], vertical[361];
+  UtAntennaShape cuts = { .pattern = UT_PATTERN_CUTS, .horizontal_dbi = horizontal, .n_horizontal = 720, .vertical_dbi = vertical, .n_vertical = 361 };
+  GRand *rand = g_rand_new_with_seed (9);
+
+  for (int k = 0; k < 720; k++)
+    g_assert_cmpint (ut_antenna_gain_dbi (&sector, 0, 0, (double[]){ sin (k / 2.0 * RAD_PER_DEG), cos (k / 2.0 * RAD_PER_DEG), 0 }, &horizontal[k]), ==, UT_RADIO_OK);
+  for (int k = 0; k < 361; k++)
+    {
+      double up = (k / 2.0 - 90) * RAD_PER_DEG;
+
+      g_assert_cmpint (ut_antenna_gain_dbi (&sector, 0, 0, (double[]){ 0, fmax (cos (up), 1e-12), sin (up) }, &vertical[k]), ==, UT_RADIO_OK);
+    }
+  g_assert_cmpfloat (ut_antenna_peak_dbi (&cuts), ==, 8);
+  for (int trial = 0; trial < 2000; trial++)
+    {
+      double direction[3] = { g_rand_double_range (rand, -1, 1), g_rand_double_range (rand, -1, 1), g_rand_double_range (rand, -1, 1) }, a = NAN, b = NAN;
+      double azimuth = g_rand_double_range (rand, -200, 400), tilt = g_rand_double_range (rand, -90, 90);
+
+      ut_antenna_gain_dbi (&sector, azimuth, tilt, direction, &a);
+      g_assert_cmpint (ut_antenna_gain_dbi (&cuts, azimuth, tilt, direction, &b), ==, UT_RADIO_OK);
+      g_assert_cmpfloat_with_epsilon (a, b, 0.02);
+    }
+  cuts.n_vertical = 1;
+  double untouched = 5;
+  g_assert_cmpint (ut_antenna_gain_dbi (&cuts, 0, 0, (double[]){ 0, 1, 0 }, &untouched), ==, UT_RADIO_INVALID);
+  g_assert_cmpfloat (untouched, ==, 5);
+  g_rand_free (rand);
+}
+
+/* 3GPP TS 38.101-1 table 5.3.2-1: no channel's resource blocks fill more than 99 % of it, and twice the sub-carriers take about half the blocks. */
+static void
+test_channels (void)
+{
+  static const double widths[] = { 5, 10, 15, 20, 25, 30, 35, 40, 45, 50, 60, 70, 80, 90, 100 };
+
+  for (gsize i = 0; i < G_N_ELEMENTS (widths); i++)
+    for (int khz = 15; khz <= 60; khz *= 2)
+      {
+        unsigned blocks = ut_resource_blocks (widths[i], khz);
+
+        if (blocks == 0)
+          {
+            g_assert_true ((khz == 15 && widths[i] > 50) || (khz == 60 && widths[i] < 10));
+            continue;
+          }
+        g_assert_cmpfloat (ut_occupied_hz (blocks, khz), <, 0.99e6 * widths[i]);
+        g_assert_cmpfloat (ut_occupied_hz (blocks, khz), >, 0.79e6 * widths[i] - 12e3 * khz);
+        if (khz < 60 && ut_resource_blocks (widths[i], 2 * khz) > 0)
+          g_assert_cmpint (ABS ((int) blocks - 2 * (int) ut_resource_blocks (widths[i], 2 * khz)), <=, 6);
+      }
+  /* Published: 51 blocks of 30 kHz in 20 MHz are 18.36 MHz, 273 in 100 MHz are 98.28 MHz. */
+  g_assert_cmpfloat_with_epsilon (ut_occupied_hz (ut_resource_blocks (20, 30), 30), 18.36e6, 1);
+  g_assert_cmpfloat_with_epsilon (ut_occupied_hz (ut_resource_blocks (100, 30), 30), 98.28e6, 1);
+  g_assert_cmpuint (ut_resource_blocks (7, 30), ==, 0);
+  g_assert_cmpfloat_with_epsilon (ut_element_dbm (0, 51), -27.868, 1e-3);
+}
+
+static void
+test_shannon_there_and_back (void)
+{
+  for (double efficiency = 0.09; efficiency <= 4.4; efficiency += 0.01)
+    {
+      double sinr_db = NAN;
+
+      g_assert_cmpint (ut_shannon_sinr_db (&ut_shannon_down, efficiency, &sinr_db), ==, UT_RADIO_OK);
+      g_assert_cmpfloat_with_epsilon (ut_shannon_efficiency (&ut_shannon_down, sinr_db), efficiency, 1e-12);
+      g_assert_cmpuint (ut_cqi_for_efficiency (efficiency), >=, 1);
+      g_assert_cmpfloat (ut_cqis[ut_cqi_for_efficiency (efficiency) - 1].bit_s_hz, >=, efficiency);
+    }
+  g_assert_cmpuint (ut_cqi_for_efficiency (5.6), ==, 0);
+}
+
+/* The series says what averaging says. */
+static void
+test_fit (void)
+{
+  static const struct { const char *material[3]; double thickness_m[3]; gsize n; } stacks[] = {
+    { { "concrete" }, { 0.2 }, 1 }, { { "plasterboard", "air", "plasterboard" }, { 0.0125, 0.075, 0.0125 }, 3 },
+    { { "glass", "air", "glass" }, { 0.006, 0.016, 0.006 }, 3 }, { { "chipboard" }, { 0.02 }, 1 }, { { "brick" }, { 0.1 }, 1 }, { { "metal" }, { 0.001 }, 1 },
+  };
+  GRand *rand = g_rand_new_with_seed (4);
+  guint fitted = 0;
+
+  for (gsize i = 0; i < G_N_ELEMENTS (stacks); i++)
+    for (int ghz = 1; ghz <= 7; ghz += 3)
+      for (int te = 0; te <= 2; te++)
+        {
+          UtLayer layers[3];
+          UtSlabLayer prepared[3];
+          UtSlab slab;
+          UtSlabFit fit;
+
+          for (gsize k = 0; k < stacks[i].n; k++)
+            {
+              layers[k].thickness_m = stacks[i].thickness_m[k];
+              ut_material_at (ut_material_find (stacks[i].material[k]), ghz * 1e9, &layers[k].relative_permittivity, &layers[k].conductivity_s_m);
+            }
+          ut_slab_prepare (layers, stacks[i].n, ghz * 1e9, prepared, &slab);
+          ut_slab_fit (&slab, te / 2.0, &fit);
+          fitted += fit.n > 0;
+          for (int trial = 0; fit.n > 0 && trial < 200; trial++)
+            {
+              double angle = g_rand_double_range (rand, 0, G_PI / 2);
+              UtSlabLoss loss;
+
+              ut_slab_evaluate (&slab, angle, te / 2.0, true, &loss);
+              g_assert_cmpfloat_with_epsilon (ut_slab_fit_loss_db (&fit, angle), loss.loss_db, 1e-3);
+            }
+        }
+  g_assert_cmpuint (fitted, >=, 45);
+  g_rand_free (rand);
+}
+
+/* Nothing is stated below 30 MHz; the near field is the least there is. */
+static void
+test_exposure_edges (void)
+{
+  double distance_m = 7;
+  UtExposureLimit governing;
+
+  g_assert_cmpint (ut_compliance_distance_m (30, 20e6, &distance_m, &governing), ==, UT_RADIO_UNKNOWN);
+  g_assert_cmpfloat (distance_m, ==, 7);
+  g_assert_cmpint (ut_compliance_distance_m (-30, 900e6, &distance_m, &governing), ==, UT_RADIO_OK);
+  g_assert_true (governing == UT_EXPOSURE_NEAR_FIELD && fabs (distance_m - 0.0530) < 1e-4);
+  g_assert_cmpint (ut_compliance_distance_m (24, 3600e6, &distance_m, &governing), ==, UT_RADIO_OK);
+  g_assert_cmpfloat_with_epsilon (distance_m, 0.0447, 5e-5);
+  g_assert_cmpint (ut_compliance_distance_m (40, 900e6, &distance_m, &governing), ==, UT_RADIO_OK);
+  g_assert_cmpstr (ut_exposure_limit_name (governing), ==, "ICNIRP 2020 whole body");
+}
+
 int
 main (int argc, char **argv)
 {
@@ -327,5 +495,11 @@ main (int argc, char **argv)
   g_test_add_func ("/antenna/sector", test_sector);
   g_test_add_func ("/antenna/refusals", test_antenna_refusals);
   g_test_add_func ("/noise/refusals", test_noise_refusals);
+  g_test_add_func ("/antenna/dipole", test_dipole);
+  g_test_add_func ("/antenna/cuts", test_cuts);
+  g_test_add_func ("/rate/channels", test_channels);
+  g_test_add_func ("/rate/there-and-back", test_shannon_there_and_back);
+  g_test_add_func ("/slab/fit", test_fit);
+  g_test_add_func ("/exposure/edges", test_exposure_edges);
   return g_test_run ();
 }

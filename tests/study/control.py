@@ -7,7 +7,7 @@ import sys
 sys.path.insert(0, str(pathlib.Path(__file__).resolve().parents[1]))
 sys.path.insert(0, str(pathlib.Path(__file__).resolve().parent))
 from oracle import Case, db, lin, random_plan  # noqa: E402
-from tap import Tap, near, run, same, solve  # noqa: E402
+from tap import Tap, enough, near, run, same, solve, trials  # noqa: E402
 
 program = sys.argv[1]
 tap = Tap()
@@ -47,7 +47,7 @@ def usable(seed):
 
 
 faults, ends, n_met, n_plans = [], [], 0, 0
-for seed in range(300):
+for seed in trials(300):
     picked = usable(seed)
     if picked is None:
         continue
@@ -83,12 +83,12 @@ for seed in range(300):
     if answer["verdict"] == "met" and not case.orphans:
         least = {(link["cell"] if case.down else link["terminal"]): link["power_dbm"] for link in answer["links"]}
         ends += [fault for n in names for fault in near(f"plan {seed} {direction} end {n}, least power", end[n], least[n], 1e-6)]
-tap.check(f"exact rounds are those of the definitions ({n_plans} plans)", faults[:20] + same("enough", n_plans > 150, True))
-tap.check(f"they end where plain iteration ends, with the least powers where all can be met ({n_met})", ends[:20] + same("enough", n_met > 40, True))
+tap.check(f"exact rounds are those of the definitions ({n_plans} plans)", faults[:20] + enough(n_plans, 150))
+tap.check(f"they end where plain iteration ends, with the least powers where all can be met ({n_met})", ends[:20] + enough(n_met, 40))
 
 # The distance from the end shrinks as predicted.
 faults, compared = [], 0
-for seed in range(400):
+for seed in trials(400):
     picked = usable(seed)
     if picked is None:
         continue
@@ -100,11 +100,11 @@ for seed in range(400):
         continue
     compared += 1
     faults += near(f"plan {seed} {direction} delay {delay}", observed, predicted, 0.12 * predicted + 0.05)
-tap.check(f"the distance shrinks as the spectral radius says ({compared} plans)", faults + same("enough", compared > 20, True))
+tap.check(f"the distance shrinks as the spectral radius says ({compared} plans)", faults + enough(compared, 20))
 
 # Up and down by steps: in the end within the band, where the headroom allows for it.
 faults, held = [], 0
-for seed in range(300):
+for seed in trials(300):
     picked = usable(seed)
     if picked is None:
         continue
@@ -128,11 +128,11 @@ for seed in range(300):
                    if sinr < link["target_db"] - 2 * (delay + 1) * step - error - 1e-9]
     again = control(plan, direction, "--rule", "steps", "--step", str(step), "--delay", str(delay), "--error", str(error), "--rounds", "500", "--seed", str(seed))
     faults += same(f"plan {seed} again", again == got, True)
-tap.check(f"steps stay in the band ({held} plans)", faults[:20] + same("enough", held > 25, True))
+tap.check(f"steps stay in the band ({held} plans)", faults[:20] + enough(held, 25))
 
 # Simultaneous downlink: no cell ever sends more than it can.
 faults, compared = [], 0
-for seed in range(1, 200, 4):
+for seed in trials(1, 200)[::4]:
     plan, direction = random_plan(seed)
     case = Case(plan, direction)
     if not case.live:
@@ -148,5 +148,5 @@ for seed in range(1, 200, 4):
     if not case.orphans:
         faults += same(f"plan {seed} end known", got["end_dbm"] is not None, answer["verdict"] == "met" or all(
             list(case.serving.values()).count(c) == 1 for c in case.serving.values()))
-tap.check(f"simultaneous downlink: sums are kept ({compared} plans)", faults[:20] + same("enough", compared > 25, True))
+tap.check(f"simultaneous downlink: sums are kept ({compared} plans)", faults[:20] + enough(compared, 25))
 tap.end()

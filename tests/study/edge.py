@@ -8,7 +8,7 @@ import numpy as np
 sys.path.insert(0, str(pathlib.Path(__file__).resolve().parents[1]))
 sys.path.insert(0, str(pathlib.Path(__file__).resolve().parent))
 from oracle import Case, db, random_plan  # noqa: E402
-from tap import Tap, same, solve  # noqa: E402
+from tap import Tap, enough, same, solve, trials  # noqa: E402
 
 program = sys.argv[1]
 tap = Tap()
@@ -42,7 +42,7 @@ def louder(terminal, cell):
 
 faults, compared, kinds = [], 0, {"interference": 0, "limit": 0}
 chain_faults, noise_compared = [], 0
-for seed in range(400):
+for seed in trials(400):
     plan, direction = random_plan(seed)
     answer = solve(program, plan, "--direction", direction)
     edge = answer["edge"]
@@ -99,9 +99,9 @@ for seed in range(400):
             noise_compared += 1
             if abs(slope - answer["edge"]["noise_part"]) > 4e-3:
                 chain_faults.append(f"plan {seed} {direction}: 1 dB more for {at_limit} helps by {slope}, noise has {answer['edge']['noise_part']}")
-tap.check(f"blame is how far 1 dB on the path moves the edge ({compared} paths, {kinds})", faults + same("enough", compared > 100, True))
+tap.check(f"blame is how far 1 dB on the path moves the edge ({compared} paths, {kinds})", faults + enough(compared, 100))
 tap.check(f"chains begin at the radio at its limit and hang together; 1 dB more for it helps by the part of noise ({noise_compared})",
-          chain_faults + same("enough", noise_compared > 80, True))
+          chain_faults + enough(noise_compared, 80))
 
 
 def perron(case):
@@ -119,7 +119,7 @@ def perron(case):
 
 
 faults, compared = [], 0
-for seed in range(1, 400, 2):
+for seed in trials(1, 400)[::2]:
     plan, direction = random_plan(seed)
     answer = solve(program, plan, "--direction", direction)
     if answer["verdict"] != "interference-limited":
@@ -131,5 +131,5 @@ for seed in range(1, 400, 2):
     faults += [f"plan {seed}: {t} is missing, involved by {involved[t]}" for t in order if t not in got]
     faults += [f"plan {seed}: {t} should not be there, involved by {involved[t]}" for t in got if involved[t] < 0.95e-3]
     faults += [f"plan {seed}: {got} is not sorted by involvement" for a, b in zip(got, got[1:]) if involved[a] < involved[b] * (1 - 1e-4)]
-tap.check(f"simultaneous sharing: the limiting group is who the Perron vectors name ({compared} plans)", faults + same("enough", compared > 20, True))
+tap.check(f"simultaneous sharing: the limiting group is who the Perron vectors name ({compared} plans)", faults + enough(compared, 20))
 tap.end()

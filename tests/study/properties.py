@@ -9,7 +9,7 @@ import sys
 sys.path.insert(0, str(pathlib.Path(__file__).resolve().parents[1]))
 sys.path.insert(0, str(pathlib.Path(__file__).resolve().parent))
 from oracle import random_plan  # noqa: E402
-from tap import Tap, run, same, solve  # noqa: E402
+from tap import Tap, enough, run, same, solve, trials  # noqa: E402
 
 program = sys.argv[1]
 tap = Tap()
@@ -21,7 +21,7 @@ def value(db):
 
 # A link less never lowers the headroom, unless its cell falls idle in the simultaneous downlink and so sends more than before.
 faults, compared = [], 0
-for seed in range(160):
+for seed in trials(160):
     plan, direction = random_plan(seed)
     answer = solve(program, plan, "--direction", direction)
     if len(answer["links"]) < 2 or any(link["cell"] is None for link in answer["links"]):
@@ -35,11 +35,11 @@ for seed in range(160):
     rest = solve(program, fewer, "--direction", direction)
     if rest["links"] and value(rest["headroom_db"]) < value(answer["headroom_db"]) - 1e-8:
         faults.append(f"plan {seed}: {answer['headroom_db']} with {gone['terminal']}, {rest['headroom_db']} without")
-tap.check(f"a link less never lowers the headroom ({compared} plans)", faults + same("enough", compared > 80, True))
+tap.check(f"a link less never lowers the headroom ({compared} plans)", faults + enough(compared, 80))
 
 # Powers on steps are never below the continuous ones.
 faults, compared = [], 0
-for seed in range(160):
+for seed in trials(160):
     plan, direction = random_plan(seed)
     if seed & 3 == 1:
         continue
@@ -54,12 +54,12 @@ for seed in range(160):
     compared += 1
     faults += [f"plan {seed}: {a['id']} at {b['power_dbm']} on steps, {a['power_dbm']} without"
                for a, b in zip(one["transmitters"], other["transmitters"]) if b["power_dbm"] < a["power_dbm"] - 1e-8]
-tap.check(f"powers on steps are never below the continuous ones ({compared} plans)", faults + same("enough", compared > 25, True))
+tap.check(f"powers on steps are never below the continuous ones ({compared} plans)", faults + enough(compared, 25))
 
 # The best balanced SIR without limits and noise is the same for a system and its transpose (Zander, IEEE Trans. Veh. Technol. 41(1), 1992, from memory):
 # both directions of one-terminal cells, all at once, have the same spectral radius.
 faults = []
-for seed in range(60):
+for seed in trials(60):
     rng = random.Random(seed)
     n = rng.randint(2, 8)
     radio = {"storey": "S1", "x_m": 0, "y_m": 0, "height_m": 1, "power_dbm": 0, "power_min_dbm": -390, "power_max_dbm": 300, "power_step_db": 0}

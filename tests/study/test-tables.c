@@ -38,7 +38,7 @@ test_laws (void)
   for (guint kind = 0; ut_law_name ((UtLawKind) kind) != NULL; kind++)
     {
       /* With every parameter that any law asks for. */
-      g_autofree char *base = g_strdup_printf ("{\"law\": \"%s\", \"exponent\": 2, \"reference_m\": 1}", ut_law_name ((UtLawKind) kind));
+      g_autofree char *base = g_strdup_printf ("{\"law\": \"%s\", \"exponent\": 2, \"reference_m\": 1, \"environment\": \"office\", \"clutter\": \"sl\", \"coefficient\": 30}", ut_law_name ((UtLawKind) kind));
       g_assert_true (is_accepted (base, "wood"));
     }
   g_assert_false (is_accepted ("{\"law\": \"guesswork\"}", "wood"));
