@@ -261,6 +261,49 @@ test_thread (void)
   assert_answered (desk);
 }
 
+static const UtPlan *
+with (const UtPlan *plan, const char *label, const char *text)
+{
+  g_autofree char *refusal = NULL;
+  const UtPlan *next = ut_fields_with (plan, UT_SUBJECT_PLAN, NULL, field_index (UT_SUBJECT_PLAN, label), text, &refusal);
+
+  g_test_message ("%s: %s", label, refusal != NULL ? refusal : "taken");
+  return next;
+}
+
+/* Every law can be chosen, shows its own parameters and no others, and lists are typed with spaces. */
+static void
+test_law_fields (void)
+{
+  static const char *const own[][6] = {
+    { NULL }, { "Exponent", "Reference distance", NULL }, { "Environment", "Line of sight", NULL }, { "Coefficient", "1, 2, 3 … floors", NULL },
+    { "Line of sight", NULL }, { "Line of sight", "Clutter", NULL }, { "Light wall", "Heavy wall", "Floor", "Floor exponent b", NULL },
+  };
+  static const char *const parameters[] = { "Exponent", "Reference distance", "Environment", "Line of sight", "Clutter", "Coefficient", "1, 2, 3 … floors",
+                                            "Light wall", "Heavy wall", "Floor", "Floor exponent b" };
+  g_autoptr (UtPlan) plan = (UtPlan *) ut_plan_new_empty ();
+
+  for (guint law = 0; law < G_N_ELEMENTS (own); law++)
+    {
+      char position[] = { (char) ('0' + law), '\0' };
+      g_autoptr (UtPlan) chosen = law == plan->propagation->law ? (UtPlan *) ut_plan_ref (plan) : (UtPlan *) with (plan, "Law", position);
+
+      g_assert_nonnull (chosen);
+      g_assert_cmpint (chosen->propagation->law, ==, law);
+      for (guint k = 0; k < G_N_ELEMENTS (parameters); k++)
+        g_assert_cmpint (ut_fields_applies (chosen, UT_SUBJECT_PLAN, field_index (UT_SUBJECT_PLAN, parameters[k])), ==, g_strv_contains (own[law], parameters[k]));
+    }
+  g_autoptr (UtPlan) coefficient = (UtPlan *) with (plan, "Law", "3");
+  g_autoptr (UtPlan) floors = (UtPlan *) with (coefficient, "1, 2, 3 … floors", "9 19,5; 24");
+  g_assert_nonnull (floors);
+  g_assert_cmpuint (floors->propagation->floor_loss_db->len, ==, 3);
+  g_assert_cmpfloat (g_array_index (floors->propagation->floor_loss_db, double, 1), ==, 19.5);
+  g_autofree char *text = ut_fields_text (floors, UT_SUBJECT_PLAN, NULL, field_index (UT_SUBJECT_PLAN, "1, 2, 3 … floors"));
+  g_assert_cmpstr (text, ==, "9 19.5 24");
+  g_assert_null (with (coefficient, "1, 2, 3 … floors", "9 many"));
+  g_assert_null (with (coefficient, "1, 2, 3 … floors", "9 -1"));
+}
+
 int
 main (int argc, char **argv)
 {
@@ -273,5 +316,6 @@ main (int argc, char **argv)
   g_test_add_func ("/desk/fields", test_fields);
   g_test_add_func ("/desk/field-edits", test_field_edits);
   g_test_add_func ("/desk/thread", test_thread);
+  g_test_add_func ("/fields/laws", test_law_fields);
   return g_test_run ();
 }

@@ -7,6 +7,7 @@
 #include "page-file.h"
 #include "plan-painter.h"
 #include "plan-read.h"
+#include "polar.h"
 #include "text.h"
 
 static const UtPlan *
@@ -211,6 +212,46 @@ test_refused_endings (void)
   g_assert_false (g_file_test ("page.doc", G_FILE_TEST_EXISTS));
 }
 
+/* Whether the curve's colour, or nearly, is at this place. */
+static gboolean
+has_curve (cairo_surface_t *surface, int x, int y)
+{
+  const UtColour *colour = &ut_palette_paper.margin[UT_MARGIN_EASY];
+
+  for (int dy = -2; dy <= 2; dy++)
+    for (int dx = -2; dx <= 2; dx++)
+      {
+        const unsigned char *pixel
+          = cairo_image_surface_get_data (surface) + (y + dy) * cairo_image_surface_get_stride (surface) + (x + dx) * 4;
+
+        if (fabs (pixel[0] / 255.0 - colour->blue) + fabs (pixel[1] / 255.0 - colour->green) + fabs (pixel[2] / 255.0 - colour->red) < 0.1)
+          return TRUE;
+      }
+  return FALSE;
+}
+
+/* A sector of the cold store turned to the right: full gain there, 30 dB less behind it; tilted by 90 degrees it looks down. */
+static void
+test_polar (void)
+{
+  g_autoptr (UtPlan) plan = (UtPlan *) example ("cold-store.undertone");
+  const int width = 600, height = 300;
+  cairo_surface_t *surface = cairo_image_surface_create (CAIRO_FORMAT_RGB24, width, height);
+  cairo_t *cr = cairo_create (surface);
+  double side = height - 1.6 * height / 12, radius = 0.46 * side;
+  int x = width / 4, y = (int) (side / 2);
+
+  ut_polar_paint (cr, plan, "hall-65", 90, 90, width, height, &ut_palette_paper);
+  cairo_surface_flush (surface);
+  g_assert_true (has_curve (surface, (int) (x + radius), y));
+  g_assert_true (has_curve (surface, (int) (x - radius * (1 - 30 / UT_POLAR_SPAN_DB)), y));
+  g_assert_false (has_curve (surface, (int) (x - radius), y));
+  g_assert_true (has_curve (surface, 3 * width / 4, (int) (y + radius)));
+  g_assert_false (has_curve (surface, 3 * width / 4, (int) (y - radius)));
+  cairo_destroy (cr);
+  cairo_surface_destroy (surface);
+}
+
 int
 main (int argc, char **argv)
 {
@@ -222,6 +263,7 @@ main (int argc, char **argv)
   g_test_add_func ("/draw/drawing-fits", test_drawing_fits);
   g_test_add_func ("/draw/stress", test_stress);
   g_test_add_func ("/draw/hit", test_hit);
+  g_test_add_func ("/draw/polar", test_polar);
   g_test_add_func ("/draw/refused-endings", test_refused_endings);
   return g_test_run ();
 }

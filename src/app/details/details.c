@@ -2,7 +2,9 @@
 
 #include <glib/gi18n.h>
 
+#include "compat.h"
 #include "fields.h"
+#include "polar.h"
 
 struct _UtDetails
 {
@@ -11,6 +13,7 @@ struct _UtDetails
   GtkWidget *box;
   GPtrArray *editors; /* GtkWidget of each field of the subject */
   GtkLabel *heading, *refusal;
+  GtkWidget *polar; /* the antenna of the radio shown */
   UtSubject subject;
   char *id;         /* of the radio shown */
   gboolean built;
@@ -41,7 +44,11 @@ show_in_editor (UtDetails *self, GtkWidget *editor)
 {
   g_autofree char *text = ut_fields_text (ut_desk_plan (self->desk), self->subject, self->id, index_of (editor));
 
+  gboolean applies = ut_fields_applies (ut_desk_plan (self->desk), self->subject, index_of (editor));
+
   gtk_widget_remove_css_class (editor, "refused");
+  gtk_widget_set_visible (editor, applies);
+  gtk_widget_set_visible (g_object_get_data (G_OBJECT (editor), "label"), applies);
   if (GTK_IS_SWITCH (editor))
     gtk_switch_set_active (GTK_SWITCH (editor), text[0] == '1');
   else if (GTK_IS_DROP_DOWN (editor))
@@ -168,6 +175,7 @@ add_field (UtDetails *self, GtkGrid *grid, guint index)
   gtk_accessible_update_property (GTK_ACCESSIBLE (editor), GTK_ACCESSIBLE_PROPERTY_LABEL, text, -1);
   gtk_grid_attach (grid, label, 0, (int) index, 1, 1);
   gtk_grid_attach (grid, editor, 1, (int) index, 1, 1);
+  g_object_set_data (G_OBJECT (editor), "label", label);
   g_ptr_array_add (self->editors, editor);
 }
 
@@ -198,7 +206,7 @@ show_heading (UtDetails *self)
 static void
 build (UtDetails *self)
 {
-  GtkWidget *old = gtk_widget_get_last_child (self->box), *grid = gtk_grid_new ();
+  GtkWidget *old = gtk_widget_get_next_sibling (GTK_WIDGET (self->refusal)), *grid = gtk_grid_new ();
   UtSelection *selection = ut_desk_selection (self->desk);
 
   self->subject = ut_fields_subject (self->desk);
@@ -212,7 +220,7 @@ build (UtDetails *self)
   gtk_grid_set_column_spacing (GTK_GRID (grid), 8);
   for (guint i = 0; i < ut_fields_count (self->subject); i++)
     add_field (self, GTK_GRID (grid), i);
-  gtk_box_append (GTK_BOX (self->box), grid);
+  gtk_box_insert_child_after (GTK_BOX (self->box), grid, GTK_WIDGET (self->refusal));
   gtk_label_set_text (self->refusal, "");
   gtk_widget_set_visible (GTK_WIDGET (self->refusal), FALSE);
   show_heading (self);
@@ -240,6 +248,39 @@ choices_hold (UtDetails *self)
   return TRUE;
 }
 
+/* The radio shown, or NULL. */
+static const UtRadio *
+shown_radio (UtDetails *self)
+{
+  if (self->desk == NULL || self->id == NULL)
+    return NULL;
+  return ut_plan_radio (ut_desk_plan (self->desk), self->subject == UT_SUBJECT_CELL ? UT_KIND_CELL : UT_KIND_TERMINAL, self->id);
+}
+
+static void
+polar_draw_cb (GtkDrawingArea *area, cairo_t *cr, int width, int height, gpointer data)
+{
+  const UtRadio *radio = shown_radio (UT_DETAILS (data));
+  const UtPalette *palette = ut_compat_palette ();
+
+  (void) area;
+  if (radio != NULL)
+    ut_polar_paint (cr, ut_desk_plan (UT_DETAILS (data)->desk), radio->antenna, radio->azimuth_deg, radio->downtilt_deg, width, height, palette);
+}
+
+static void
+show_polar (UtDetails *self)
+{
+  const UtRadio *radio = shown_radio (self);
+
+  gtk_widget_set_visible (self->polar, radio != NULL);
+  if (radio == NULL)
+    return;
+  g_autofree char *label = g_strdup_printf (_ ("Pattern of antenna %s: horizontal and vertical cut"), radio->antenna);
+  gtk_accessible_update_property (GTK_ACCESSIBLE (self->polar), GTK_ACCESSIBLE_PROPERTY_LABEL, label, -1);
+  gtk_widget_queue_draw (self->polar);
+}
+
 static void
 refresh (UtDetails *self)
 {
@@ -256,6 +297,7 @@ refresh (UtDetails *self)
   for (guint i = 0; i < self->editors->len; i++)
     show_in_editor (self, self->editors->pdata[i]);
   show_heading (self);
+  show_polar (self);
   self->showing = FALSE;
 }
 
@@ -320,6 +362,9 @@ ut_details_init (UtDetails *self)
   gtk_widget_set_visible (GTK_WIDGET (self->refusal), FALSE);
   gtk_box_append (GTK_BOX (self->box), GTK_WIDGET (self->heading));
   gtk_box_append (GTK_BOX (self->box), GTK_WIDGET (self->refusal));
+  self->polar = g_object_new (GTK_TYPE_DRAWING_AREA, "accessible-role", GTK_ACCESSIBLE_ROLE_IMG, "content-height", 150, NULL);
+  gtk_drawing_area_set_draw_func (GTK_DRAWING_AREA (self->polar), polar_draw_cb, self, NULL);
+  gtk_box_append (GTK_BOX (self->box), self->polar);
   gtk_widget_set_parent (self->box, GTK_WIDGET (self));
   gtk_accessible_update_property (GTK_ACCESSIBLE (self), GTK_ACCESSIBLE_PROPERTY_LABEL, _ ("Details"), -1);
 }

@@ -21,20 +21,26 @@ typedef struct
   Home home;
   gsize offset;
   Source source;
+  guint laws; /* bits of the base laws that have this parameter; 0: not a parameter */
 } Row;
 
 static const char *const sharing_words[] = { N_ ("orthogonal"), N_ ("simultaneous"), NULL };
 static const char *const polarization_words[] = { N_ ("vertical"), N_ ("horizontal"), N_ ("mixed"), NULL };
 static const char *const slab_words[] = { N_ ("coherent"), N_ ("averaged"), NULL };
-static const char *const law_words[] = { N_ ("free space"), N_ ("log-distance"), NULL };
+/* In the order of the enumerations of plan.h. */
+static const char *const law_words[] = { N_ ("free space"),    N_ ("log-distance"),   N_ ("site-general"), N_ ("distance coefficient"),
+                                         N_ ("indoor office"), N_ ("indoor factory"), N_ ("multi-wall"),   NULL };
+static const char *const environment_words[] = { N_ ("office"), N_ ("corridor"), N_ ("industrial"), NULL };
+static const char *const sight_words[] = { N_ ("in sight"), N_ ("out of sight"), N_ ("by walls"), NULL };
+static const char *const clutter_words[] = { N_ ("sparse, low cell"), N_ ("dense, low cell"), N_ ("sparse, high cell"), N_ ("dense, high cell"), NULL };
 
 #define AT(Struct, member) G_STRUCT_OFFSET (Struct, member)
-#define RADIO(label, unit, kind, member) { { N_ (label), unit, kind, NULL }, IN_RADIO, AT (UtRadio, member), FIXED }
+#define RADIO(label, unit, kind, member) { { N_ (label), unit, kind, NULL }, IN_RADIO, AT (UtRadio, member), FIXED, 0 }
 
 #define PLACE                                                                                      \
   RADIO ("Name", NULL, UT_FIELD_TEXT, name), RADIO ("x", "m", UT_FIELD_NUMBER, x_m), RADIO ("y", "m", UT_FIELD_NUMBER, y_m),                \
     RADIO ("Height", "m", UT_FIELD_NUMBER, height_m),                                              \
-    { { N_ ("Antenna"), NULL, UT_FIELD_CHOICE, NULL }, IN_RADIO, AT (UtRadio, antenna), ANTENNAS }, \
+    { { N_ ("Antenna"), NULL, UT_FIELD_CHOICE, NULL }, IN_RADIO, AT (UtRadio, antenna), ANTENNAS, 0 }, \
     RADIO ("Azimuth", "°", UT_FIELD_NUMBER, azimuth_deg), RADIO ("Downtilt", "°", UT_FIELD_NUMBER, downtilt_deg),                           \
     RADIO ("Feeder loss", "dB", UT_FIELD_NUMBER, feeder_loss_db)
 
@@ -44,15 +50,17 @@ static const char *const law_words[] = { N_ ("free space"), N_ ("log-distance"),
     RADIO ("Noise figure", "dB", UT_FIELD_NUMBER, noise_figure_db), RADIO ("Activity", NULL, UT_FIELD_NUMBER, activity),                    \
     RADIO ("On", NULL, UT_FIELD_SWITCH, on)
 
-#define CELL(label, unit, kind, member) { { N_ (label), unit, kind, NULL }, IN_CELL, AT (UtCell, member), FIXED }
-#define TERMINAL(label, unit, kind, member) { { N_ (label), unit, kind, NULL }, IN_TERMINAL, AT (UtTerminal, member), FIXED }
-#define CARRIER(label, unit, kind, choices, member) { { N_ (label), unit, kind, choices }, IN_CARRIER, AT (UtCarrier, member), FIXED }
-#define PROPAGATION(label, unit, kind, choices, member) { { N_ (label), unit, kind, choices }, IN_PROPAGATION, AT (UtPropagation, member), FIXED }
+#define CELL(label, unit, kind, member) { { N_ (label), unit, kind, NULL }, IN_CELL, AT (UtCell, member), FIXED, 0 }
+#define TERMINAL(label, unit, kind, member) { { N_ (label), unit, kind, NULL }, IN_TERMINAL, AT (UtTerminal, member), FIXED, 0 }
+#define CARRIER(label, unit, kind, choices, member) { { N_ (label), unit, kind, choices }, IN_CARRIER, AT (UtCarrier, member), FIXED, 0 }
+#define PROPAGATION(label, unit, kind, choices, member) { { N_ (label), unit, kind, choices }, IN_PROPAGATION, AT (UtPropagation, member), FIXED, 0 }
+#define PARAMETER(label, unit, kind, choices, member, of) { { N_ (label), unit, kind, choices }, IN_PROPAGATION, AT (UtPropagation, member), FIXED, of }
+#define SIGHTED (1u << UT_BASE_SITE_GENERAL | 1u << UT_BASE_INDOOR_OFFICE | 1u << UT_BASE_INDOOR_FACTORY)
 
 static const Row cell_rows[] = { PLACE, POWERS, CELL ("Channel", NULL, UT_FIELD_WHOLE, channel) };
 
 static const Row terminal_rows[] = {
-  { { N_ ("Served by"), NULL, UT_FIELD_CHOICE, NULL }, IN_TERMINAL, AT (UtTerminal, cell), SERVING },
+  { { N_ ("Served by"), NULL, UT_FIELD_CHOICE, NULL }, IN_TERMINAL, AT (UtTerminal, cell), SERVING, 0 },
   TERMINAL ("Downlink target", "dB", UT_FIELD_NUMBER_OR_NONE, target_down_db),
   TERMINAL ("Uplink target", "dB", UT_FIELD_NUMBER_OR_NONE, target_up_db),
   TERMINAL ("Downlink level", "dBm", UT_FIELD_NUMBER_OR_NONE, level_down_dbm),
@@ -64,24 +72,36 @@ static const Row terminal_rows[] = {
 };
 
 static const Row plan_rows[] = {
-  { { N_ ("Title"), NULL, UT_FIELD_TEXT, NULL }, IN_PLAN, AT (UtPlan, title), FIXED },
+  { { N_ ("Title"), NULL, UT_FIELD_TEXT, NULL }, IN_PLAN, AT (UtPlan, title), FIXED, 0 },
   CARRIER ("Frequency", "MHz", UT_FIELD_NUMBER, NULL, frequency_mhz),
   CARRIER ("Bandwidth", "MHz", UT_FIELD_NUMBER, NULL, bandwidth_mhz),
   CARRIER ("Sharing", NULL, UT_FIELD_CHOICE, sharing_words, sharing),
   CARRIER ("Processing gain", "dB", UT_FIELD_NUMBER, NULL, processing_gain_db),
   CARRIER ("Downlink orthogonality", NULL, UT_FIELD_NUMBER, NULL, downlink_orthogonality),
   CARRIER ("Channels", NULL, UT_FIELD_WHOLE, NULL, channels),
+  CARRIER ("Channel isolation", "dB", UT_FIELD_NUMBERS, NULL, channel_isolation_db),
   CARRIER ("Polarization", NULL, UT_FIELD_CHOICE, polarization_words, polarization),
   CARRIER ("Noise temperature", "K", UT_FIELD_NUMBER, NULL, noise_temperature_k),
   CARRIER ("Design margin", "dB", UT_FIELD_NUMBER, NULL, margin_db),
   CARRIER ("EIRP limit", "dBm", UT_FIELD_NUMBER_OR_NONE, NULL, eirp_limit_dbm),
   PROPAGATION ("Law", NULL, UT_FIELD_CHOICE, law_words, law),
-  PROPAGATION ("Exponent", NULL, UT_FIELD_NUMBER, NULL, exponent),
-  PROPAGATION ("Reference distance", "m", UT_FIELD_NUMBER, NULL, reference_m),
+  PARAMETER ("Exponent", NULL, UT_FIELD_NUMBER, NULL, exponent, 1u << UT_BASE_LOG_DISTANCE),
+  PARAMETER ("Reference distance", "m", UT_FIELD_NUMBER, NULL, reference_m, 1u << UT_BASE_LOG_DISTANCE),
+  PARAMETER ("Environment", NULL, UT_FIELD_CHOICE, environment_words, environment, 1u << UT_BASE_SITE_GENERAL),
+  PARAMETER ("Line of sight", NULL, UT_FIELD_CHOICE, sight_words, sight, SIGHTED),
+  PARAMETER ("Clutter", NULL, UT_FIELD_CHOICE, clutter_words, clutter, 1u << UT_BASE_INDOOR_FACTORY),
+  PARAMETER ("Coefficient", NULL, UT_FIELD_NUMBER, NULL, coefficient, 1u << UT_BASE_DISTANCE_COEFFICIENT),
+  PARAMETER ("1, 2, 3 … floors", "dB", UT_FIELD_NUMBERS, NULL, floor_loss_db, 1u << UT_BASE_DISTANCE_COEFFICIENT),
+  PARAMETER ("Light wall", "dB", UT_FIELD_NUMBER, NULL, light_db, 1u << UT_BASE_MULTI_WALL),
+  PARAMETER ("Heavy wall", "dB", UT_FIELD_NUMBER, NULL, heavy_db, 1u << UT_BASE_MULTI_WALL),
+  PARAMETER ("Floor", "dB", UT_FIELD_NUMBER, NULL, floor_db, 1u << UT_BASE_MULTI_WALL),
+  PARAMETER ("Floor exponent b", NULL, UT_FIELD_NUMBER, NULL, b, 1u << UT_BASE_MULTI_WALL),
   PROPAGATION ("Count walls", NULL, UT_FIELD_SWITCH, NULL, walls),
   PROPAGATION ("Limit of one crossing", "dB", UT_FIELD_NUMBER, NULL, wall_loss_limit_db),
   PROPAGATION ("Limit of all crossings", "dB", UT_FIELD_NUMBER_OR_NONE, NULL, excess_loss_limit_db),
   PROPAGATION ("Layered walls", NULL, UT_FIELD_CHOICE, slab_words, slab),
+  PROPAGATION ("Shadowing", "dB", UT_FIELD_NUMBER, NULL, shadowing_db),
+  PROPAGATION ("Correlation distance", "m", UT_FIELD_NUMBER, NULL, correlation_m),
 };
 
 static const struct
@@ -119,6 +139,14 @@ const UtField *
 ut_fields_field (UtSubject subject, guint index)
 {
   return &subjects[subject].rows[index].field;
+}
+
+gboolean
+ut_fields_applies (const UtPlan *plan, UtSubject subject, guint index)
+{
+  guint laws = subjects[subject].rows[index].laws;
+
+  return laws == 0 || (laws & 1u << plan->propagation->law) != 0;
 }
 
 /* The struct a row's field lies in, or NULL when the radio is gone. */
@@ -178,6 +206,20 @@ number_text (double value)
   return g_strdup (isnan (value) ? "" : ut_number_text (value, buffer));
 }
 
+static char *
+numbers_text (const GArray *numbers)
+{
+  GString *text = g_string_new (NULL);
+
+  for (guint i = 0; i < numbers->len; i++)
+    {
+      g_autofree char *number = number_text (g_array_index (numbers, double, i));
+
+      g_string_append_printf (text, "%s%s", i > 0 ? " " : "", number);
+    }
+  return g_string_free (text, FALSE);
+}
+
 char *
 ut_fields_text (const UtPlan *plan, UtSubject subject, const char *id, guint index)
 {
@@ -193,6 +235,8 @@ ut_fields_text (const UtPlan *plan, UtSubject subject, const char *id, guint ind
     case UT_FIELD_NUMBER:
     case UT_FIELD_NUMBER_OR_NONE:
       return number_text (FIELD (double, home, row));
+    case UT_FIELD_NUMBERS:
+      return numbers_text (FIELD (GArray *, home, row));
     case UT_FIELD_WHOLE:
       return g_strdup_printf ("%d", FIELD (int, home, row));
     case UT_FIELD_SWITCH:
@@ -224,6 +268,25 @@ parse_number (const char *text, double *value)
   g_strstrip (plain->str);
   *value = g_ascii_strtod (plain->str, &end);
   return end != plain->str && *end == '\0' && isfinite (*value);
+}
+
+static gboolean
+set_numbers (GArray *numbers, const char *text)
+{
+  g_auto (GStrv) words = g_strsplit_set (text, " ;", -1);
+
+  g_array_set_size (numbers, 0);
+  for (guint i = 0; words[i] != NULL; i++)
+    {
+      double value;
+
+      if (words[i][0] == '\0')
+        continue;
+      if (!parse_number (words[i], &value))
+        return FALSE;
+      g_array_append_val (numbers, value);
+    }
+  return TRUE;
 }
 
 static void
@@ -266,6 +329,11 @@ set_field (const UtPlan *plan, const Row *row, void *home, const char *text, cha
         break;
       FIELD (double, home, row) = value;
       return TRUE;
+    case UT_FIELD_NUMBERS:
+      if (set_numbers (FIELD (GArray *, home, row), text))
+        return TRUE;
+      *refusal = g_strdup_printf (_ ("“%s” is no list of numbers; expected numbers with spaces between, or nothing"), text);
+      return FALSE;
     case UT_FIELD_WHOLE:
       if (!parse_number (text, &value) || fabs (value) > 1e6 || value < floor (value) || value > floor (value))
         break;

@@ -16,6 +16,7 @@ typedef enum
   UT_FIELD_TEXT,
   UT_FIELD_NUMBER,
   UT_FIELD_NUMBER_OR_NONE, /* empty: none */
+  UT_FIELD_NUMBERS,        /* a list, by spaces or semicolons */
   UT_FIELD_WHOLE,
   UT_FIELD_SWITCH,
   UT_FIELD_CHOICE,
@@ -32,6 +33,9 @@ typedef struct
 UtSubject ut_fields_subject (UtDesk *desk);
 guint ut_fields_count (UtSubject subject);
 const UtField *ut_fields_field (UtSubject subject, guint index);
+
+/* Whether the field has any meaning in this plan: parameters of another base law have none. */
+gboolean ut_fields_applies (const UtPlan *plan, UtSubject subject, guint index);
 
 /* The choices of a field in this plan (translated); transfer full, NULL for fields that are no choice. */
 char **ut_fields_choices (const UtPlan *plan, UtSubject subject, guint index);
