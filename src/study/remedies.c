@@ -534,14 +534,22 @@ try_pads_at (Search *search, const guint *transmitters, guint n)
     }
 }
 
-/* Transmitters that stand at their lowest power in the answer: one alone, else all of them. */
-static void
-try_pads (Search *search)
+static gboolean
+holds (const GArray *indices, guint index)
+{
+  for (guint i = 0; i < indices->len; i++)
+    if (g_array_index (indices, guint, i) == index)
+      return TRUE;
+  return FALSE;
+}
+
+/* Transmitters that stand at their lowest power in the answer, those with most of the blame first. */
+static GArray *
+transmitters_at_lowest (const Search *search)
 {
   g_autoptr (GArray) lowest = g_array_new (FALSE, FALSE, sizeof (guint));
+  GArray *ordered = g_array_new (FALSE, FALSE, sizeof (guint));
 
-  if (search->study->verdict != UT_VERDICT_MINIMUM_LIMITED)
-    return;
   for (guint i = 0; i < search->study->transmitters->len; i++)
     {
       const UtTransmitterAnswer *sender = ut_study_transmitter (search->study, i);
@@ -549,10 +557,34 @@ try_pads (Search *search)
       if (sender->power_dbm <= sender->power_min_dbm + 1e-6)
         g_array_append_val (lowest, sender->index);
     }
+  for (guint i = 0; i < search->study->edge.blame->len; i++)
+    {
+      guint index = (guint) g_array_index (search->study->edge.blame, UtBlame, i).because_of;
+
+      if (holds (lowest, index) && !holds (ordered, index))
+        g_array_append_val (ordered, index);
+    }
   for (guint i = 0; i < lowest->len; i++)
-    try_pads_at (search, &g_array_index (lowest, guint, i), 1);
-  if (search->found->len == 0 && lowest->len > 1)
-    try_pads_at (search, (const guint *) lowest->data, lowest->len);
+    if (!holds (ordered, g_array_index (lowest, guint, i)))
+      g_array_append_val (ordered, g_array_index (lowest, guint, i));
+  return ordered;
+}
+
+/* Attenuators at one alone, else at the first two, four, ... of them, else at all. */
+static void
+try_pads (Search *search)
+{
+  g_autoptr (GArray) lowest = NULL;
+  const guint *indices;
+
+  if (search->study->verdict != UT_VERDICT_MINIMUM_LIMITED)
+    return;
+  lowest = transmitters_at_lowest (search);
+  indices = (const guint *) (const void *) lowest->data;
+  for (guint i = 0; i < lowest->len && (search->study->links->len <= FEW || i < MOST_OF_A_KIND); i++)
+    try_pads_at (search, &indices[i], 1);
+  for (guint n = 2; search->found->len == 0 && n < 2 * lowest->len; n *= 2)
+    try_pads_at (search, indices, MIN (n, lowest->len));
 }
 
 /* ---- order ---- */

@@ -38,6 +38,9 @@ transmitter_id (const UtStudy *study, const UtRemedy *remedy, guint k)
                                                         : ut_plan_terminal (study->gains->plan, index)->radio.id;
 }
 
+/* A sentence names no more. */
+#define MOST_NAMES 6
+
 static char *
 list_transmitters (const UtStudy *study, const UtRemedy *remedy)
 {
@@ -45,6 +48,11 @@ list_transmitters (const UtStudy *study, const UtRemedy *remedy)
 
   for (guint k = 0; k < remedy->transmitters->len; k++)
     {
+      if (k == MOST_NAMES && remedy->transmitters->len > MOST_NAMES + 1)
+        {
+          g_string_append_printf (names, " and %u more", remedy->transmitters->len - k);
+          break;
+        }
       g_string_append_printf (names, "%s%s", k == 0 ? "" : ", ", transmitter_id (study, remedy, k));
       if (remedy->to_dbm->len > k)
         {
