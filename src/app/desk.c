@@ -1,10 +1,12 @@
 #include "desk.h"
 
 #include <math.h>
+#include <string.h>
 
 #include <glib/gi18n.h>
 
 #include "plan-edit.h"
+#include "walls.h"
 
 struct _UtDesk
 {
@@ -225,7 +227,11 @@ ut_desk_moved (UtDesk *self, const UtPlan *plan, double dx_m, double dy_m)
   for (guint i = 0; i < ut_selection_size (self->selection); i++)
     {
       const UtPick *pick = ut_selection_pick (self->selection, i);
-      const UtPlan *next = with_radio (moved, pick->kind, pick->id, move_radio, by_m);
+      guint storey, wall;
+      const UtPlan *next = pick->kind != UT_KIND_WALL ? with_radio (moved, pick->kind, pick->id, move_radio, by_m)
+                           : ut_plan_find_picked_wall (moved, pick->id, &storey, &wall)
+                             ? ut_plan_with_wall_moved (moved, storey, wall, dx_m, dy_m)
+                             : ut_plan_ref (moved);
 
       ut_plan_unref (moved);
       moved = next;
@@ -243,11 +249,33 @@ char *
 ut_desk_step_label (UtDesk *self, const char *verb)
 {
   guint n = ut_selection_size (self->selection);
-  g_autofree char *many = g_strdup_printf (g_dngettext (NULL, "%u Radio", "%u Radios", n), n);
+  g_autofree char *many = ut_selection_n_radios (self->selection) == n ? g_strdup_printf (g_dngettext (NULL, "%u Radio", "%u Radios", n), n)
+                          : ut_selection_n_radios (self->selection) == 0 ? g_strdup_printf (g_dngettext (NULL, "%u Wall", "%u Walls", n), n)
+                                                                         : g_strdup_printf (g_dngettext (NULL, "%u Thing", "%u Things", n), n);
+  const char *one = n == 1 ? ut_selection_pick (self->selection, 0)->id : many;
 
-  G_GNUC_BEGIN_IGNORE_DEPRECATIONS
-  return g_strconcat (verb, " ", n == 1 ? ut_selection_pick (self->selection, 0)->id : many, NULL);
-  G_GNUC_END_IGNORE_DEPRECATIONS
+  /* Of a wall the own id alone. */
+  if (n == 1 && ut_selection_n_radios (self->selection) == 0)
+    one = strchr (one, UT_WALL_PICK_BREAK) + 1;
+  return g_strconcat (verb, " ", one, NULL);
+}
+
+/* The plan without one thing; transfer full. */
+static const UtPlan *
+without (const UtPlan *plan, const UtPick *pick)
+{
+  guint storey, wall;
+
+  switch (pick->kind)
+    {
+    case UT_KIND_CELL:
+      return ut_plan_without_cell (plan, ut_plan_find_cell (plan, pick->id));
+    case UT_KIND_TERMINAL:
+      return ut_plan_without_terminal (plan, ut_plan_find_terminal (plan, pick->id));
+    case UT_KIND_WALL:
+      break;
+    }
+  return ut_plan_find_picked_wall (plan, pick->id, &storey, &wall) ? ut_plan_without_wall (plan, storey, wall) : ut_plan_ref (plan);
 }
 
 void
@@ -262,9 +290,7 @@ ut_desk_delete_selected (UtDesk *self)
   plan = ut_plan_ref (ut_document_plan (self->document));
   for (guint i = 0; i < ut_selection_size (self->selection); i++)
     {
-      const UtPick *pick = ut_selection_pick (self->selection, i);
-      int index = pick->kind == UT_KIND_CELL ? ut_plan_find_cell (plan, pick->id) : ut_plan_find_terminal (plan, pick->id);
-      const UtPlan *next = pick->kind == UT_KIND_CELL ? ut_plan_without_cell (plan, index) : ut_plan_without_terminal (plan, index);
+      const UtPlan *next = without (plan, ut_selection_pick (self->selection, i));
 
       ut_plan_unref (plan);
       plan = next;

@@ -15,7 +15,7 @@ G_DEFINE_FINAL_TYPE (UtSelection, ut_selection, G_TYPE_OBJECT)
 enum { CHANGED, N_SIGNALS };
 static guint signals[N_SIGNALS];
 
-static const char *const kind_words[] = { [UT_KIND_CELL] = "cell", [UT_KIND_TERMINAL] = "terminal" };
+static const char *const kind_words[] = { [UT_KIND_CELL] = "cell", [UT_KIND_TERMINAL] = "terminal", [UT_KIND_WALL] = "wall" };
 
 static void
 clear_pick (gpointer data)
@@ -149,13 +149,23 @@ ut_selection_toggle (UtSelection *self, UtRadioKind kind, const char *id)
   tell (self);
 }
 
+static gboolean
+is_held (const UtPlan *plan, const UtPick *pick)
+{
+  guint storey, wall;
+
+  if (pick->kind == UT_KIND_WALL)
+    return ut_plan_find_picked_wall (plan, pick->id, &storey, &wall);
+  return ut_plan_radio (plan, pick->kind, pick->id) != NULL;
+}
+
 void
 ut_selection_keep_to (UtSelection *self, const UtPlan *plan)
 {
   guint before = self->picks->len;
 
   for (guint i = self->picks->len; i-- > 0;)
-    if (ut_plan_radio (plan, ut_selection_pick (self, i)->kind, ut_selection_pick (self, i)->id) == NULL)
+    if (!is_held (plan, ut_selection_pick (self, i)))
       g_array_remove_index (self->picks, i);
   if (self->picks->len != before)
     tell (self);
@@ -189,10 +199,43 @@ ut_selection_set_text (UtSelection *self, const char *text)
   ut_selection_thaw (self);
 }
 
+char *
+ut_wall_pick_id (const UtPlan *plan, guint storey, guint wall)
+{
+  const UtStorey *of = ut_plan_storey (plan, storey);
+
+  return g_strdup_printf ("%s%c%s", of->id, UT_WALL_PICK_BREAK, ((const UtWall *) of->walls->pdata[wall])->id);
+}
+
+gboolean
+ut_plan_find_picked_wall (const UtPlan *plan, const char *pick_id, guint *storey, guint *wall)
+{
+  const char *end = strchr (pick_id, UT_WALL_PICK_BREAK);
+  g_autofree char *storey_id = end != NULL ? g_strndup (pick_id, (gsize) (end - pick_id)) : NULL;
+  int in_storey, index;
+
+  if (end == NULL || (in_storey = ut_plan_find_storey (plan, storey_id)) < 0)
+    return FALSE;
+  index = ut_storey_find_wall (ut_plan_storey (plan, (guint) in_storey), end + 1);
+  *storey = (guint) in_storey;
+  *wall = (guint) index;
+  return index >= 0;
+}
+
+guint
+ut_selection_n_radios (UtSelection *self)
+{
+  guint n = 0;
+
+  for (guint i = 0; i < self->picks->len; i++)
+    n += ut_selection_pick (self, i)->kind != UT_KIND_WALL;
+  return n;
+}
+
 const UtRadio *
 ut_plan_radio (const UtPlan *plan, UtRadioKind kind, const char *id)
 {
-  int index = kind == UT_KIND_CELL ? ut_plan_find_cell (plan, id) : ut_plan_find_terminal (plan, id);
+  int index = kind == UT_KIND_WALL ? -1 : kind == UT_KIND_CELL ? ut_plan_find_cell (plan, id) : ut_plan_find_terminal (plan, id);
 
   if (index < 0)
     return NULL;

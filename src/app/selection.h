@@ -1,9 +1,12 @@
-/* What is selected: radios by kind and id, so that a selection outlives the revision it was made in. */
+/* What is selected: radios and walls by kind and id, so that a selection outlives the revision it was made in. */
 #pragma once
 
 #include "plan.h"
 
-typedef enum { UT_KIND_CELL, UT_KIND_TERMINAL } UtRadioKind;
+typedef enum { UT_KIND_CELL, UT_KIND_TERMINAL, UT_KIND_WALL } UtRadioKind;
+
+/* A wall's id is once in its storey only: a pick holds both, the storey's first, with this between (no id of a file can hold it: it is no text). */
+#define UT_WALL_PICK_BREAK '\x1f'
 
 typedef struct
 {
@@ -37,5 +40,14 @@ void ut_selection_set_text (UtSelection *selection, const char *text);
 void ut_selection_freeze (UtSelection *selection);
 void ut_selection_thaw (UtSelection *selection);
 
-/* The radio picked, or NULL when the plan does not hold it. */
+/* The pick of a wall: its storey's and its own id. Transfer full. */
+char *ut_wall_pick_id (const UtPlan *plan, guint storey, guint wall);
+
+/* Where a picked wall is; FALSE when the plan does not hold it. */
+gboolean ut_plan_find_picked_wall (const UtPlan *plan, const char *pick_id, guint *storey, guint *wall);
+
+/* Radios among what is selected. */
+guint ut_selection_n_radios (UtSelection *selection);
+
+/* The radio picked, or NULL when the plan does not hold it, or for a wall. */
 const UtRadio *ut_plan_radio (const UtPlan *plan, UtRadioKind kind, const char *id);

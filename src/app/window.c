@@ -11,8 +11,8 @@
 
 G_DEFINE_FINAL_TYPE (UtWindow, ut_window, GTK_TYPE_APPLICATION_WINDOW)
 
-static const char *const tool_words[] = { [UT_TOOL_SELECT] = "select", [UT_TOOL_CELL] = "cell", [UT_TOOL_TERMINAL] = "terminal" };
-static const UtAim aims[] = { UT_AIM_LEAST_POWER, UT_AIM_EQUAL_MARGIN, UT_AIM_AS_SET }; /* in the order of the drop-down */
+static const char *const tool_words[] = { [UT_TOOL_SELECT] = "select", [UT_TOOL_WALL] = "wall", [UT_TOOL_OPENING] = "opening", [UT_TOOL_CELL] = "cell", [UT_TOOL_TERMINAL] = "terminal" };
+static const UtAim aims[] = { UT_AIM_LEAST_POWER, UT_AIM_EQUAL_MARGIN, UT_AIM_FEWEST_DROPPED, UT_AIM_AS_SET }; /* in the order of the drop-down */
 
 static void
 set_enabled (UtWindow *self, const char *action, gboolean enabled)

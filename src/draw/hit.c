@@ -37,6 +37,39 @@ find_links (const UtPlan *plan, const UtStudy *study, guint storey, double x_m, 
     }
 }
 
+double
+ut_wall_distance_m (const UtWall *wall, double x_m, double y_m, double *along_m, guint *piece)
+{
+  double nearest = INFINITY, before = 0;
+
+  for (guint i = 0; i + 1 < wall->points->len; i++)
+    {
+      const UtPoint *a = &g_array_index (wall->points, UtPoint, i), *b = a + 1;
+      double dx = b->x_m - a->x_m, dy = b->y_m - a->y_m, length = hypot (dx, dy);
+      double share = length > 0 ? CLAMP (((x_m - a->x_m) * dx + (y_m - a->y_m) * dy) / (length * length), 0, 1) : 0;
+      double distance = hypot (a->x_m + share * dx - x_m, a->y_m + share * dy - y_m);
+
+      if (distance < nearest)
+        {
+          nearest = distance;
+          if (along_m != NULL)
+            *along_m = before + share * length;
+          if (piece != NULL)
+            *piece = i;
+        }
+      before += length;
+    }
+  return nearest;
+}
+
+static void
+find_walls (const UtStorey *storey, double x_m, double y_m, double tolerance_m, GArray *found)
+{
+  for (guint i = storey->walls->len; i-- > 0;)
+    if (ut_wall_distance_m (storey->walls->pdata[i], x_m, y_m, NULL, NULL) <= tolerance_m)
+      g_array_append_val (found, ((UtHit){ UT_HIT_WALL, i }));
+}
+
 UtHit
 ut_hit (const UtPlan *plan, const UtStudy *study, guint storey, double x_m, double y_m, double tolerance_m, guint skip)
 {
@@ -50,6 +83,8 @@ ut_hit (const UtPlan *plan, const UtStudy *study, guint storey, double x_m, doub
       g_array_append_val (found, ((UtHit){ UT_HIT_CELL, i }));
   if (study != NULL)
     find_links (plan, study, storey, x_m, y_m, tolerance_m / 2, found);
+  if (storey < plan->storeys->len)
+    find_walls (ut_plan_storey (plan, storey), x_m, y_m, tolerance_m / 2, found);
   if (found->len == 0)
     return (UtHit){ UT_HIT_NOTHING, 0 };
   return g_array_index (found, UtHit, skip % found->len);

@@ -311,6 +311,22 @@ ut_plan_without_terminal (const UtPlan *plan, int index)
   return next;
 }
 
+const UtPlan *
+ut_plan_with_wall (const UtPlan *plan, guint storey, int index, UtWall *wall)
+{
+  UtStorey *changed = ut_storey_copy (ut_plan_storey (plan, storey));
+  set_item (own_list (&changed->walls, &ut_kind_wall), &ut_kind_wall, index, wall);
+  return ut_plan_with_storey (plan, (int)storey, changed);
+}
+
+const UtPlan *
+ut_plan_without_wall (const UtPlan *plan, guint storey, guint index)
+{
+  UtStorey *changed = ut_storey_copy (ut_plan_storey (plan, storey));
+  g_ptr_array_remove_index (own_list (&changed->walls, &ut_kind_wall), index);
+  return ut_plan_with_storey (plan, (int)storey, changed);
+}
+
 /* ---- new ids ---- */
 
 static char *
@@ -334,4 +350,16 @@ char *
 ut_plan_free_terminal_id (const UtPlan *plan)
 {
   return free_id (plan, "T", ut_plan_find_terminal);
+}
+
+char *
+ut_plan_free_wall_id (const UtPlan *plan, guint storey)
+{
+  const UtStorey *of = ut_plan_storey (plan, storey);
+  for (guint number = 1;; number++)
+    {
+      g_autofree char *id = g_strdup_printf ("W%u", number);
+      if (ut_storey_find_wall (of, id) < 0)
+        return g_steal_pointer (&id);
+    }
 }

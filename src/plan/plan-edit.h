@@ -26,6 +26,12 @@ const UtPlan *ut_plan_without_cell (
     int index); /* terminals that named it become automatic; its measured gains go */
 const UtPlan *ut_plan_without_terminal (const UtPlan *plan, int index); /* its measured gains go */
 
+/* Walls of a storey, by their index there. */
+const UtPlan *
+ut_plan_with_wall (const UtPlan *plan, guint storey, int index, UtWall *wall); /* -1: append */
+const UtPlan *ut_plan_without_wall (const UtPlan *plan, guint storey, guint index);
+
 /* The first free id of the form prefix + number ("C5"). Transfer full. */
 char *ut_plan_free_cell_id (const UtPlan *plan);
 char *ut_plan_free_terminal_id (const UtPlan *plan);
+char *ut_plan_free_wall_id (const UtPlan *plan, guint storey);

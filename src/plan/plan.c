@@ -75,3 +75,12 @@ DEFINE_FIND (UtTerminal, terminals, ut_plan_find_terminal, radio.id)
 DEFINE_FIND (UtStorey, storeys, ut_plan_find_storey, id)
 DEFINE_FIND (UtConstruction, constructions, ut_plan_find_construction, id)
 DEFINE_FIND (UtAntenna, antennas, ut_plan_find_antenna, id)
+
+int
+ut_storey_find_wall (const UtStorey *storey, const char *id)
+{
+  for (guint i = 0; i < storey->walls->len; i++)
+    if (g_strcmp0 (((const UtWall *)storey->walls->pdata[i])->id, id) == 0)
+      return (int)i;
+  return -1;
+}

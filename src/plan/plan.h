@@ -302,5 +302,6 @@ int ut_plan_find_cell (const UtPlan *plan, const char *id);
 int ut_plan_find_terminal (const UtPlan *plan, const char *id);
 int ut_plan_find_storey (const UtPlan *plan, const char *id);
 int ut_plan_find_construction (const UtPlan *plan, const char *id);
+int ut_storey_find_wall (const UtStorey *storey, const char *id);
 int ut_plan_find_antenna (const UtPlan *plan,
                           const char *id); /* -1 for the built-in "isotropic" too */

@@ -213,6 +213,54 @@ with tempfile.TemporaryDirectory() as folder:
     tap.check("the wheel zooms about the pointer", [f"{a} became {b}" for a, b in zip((x, y), app.on_sheet(60, 24)) if abs(a - b) > 1])
     app.act("fit")
 
+    # A room with a door, drawn with the pointer and a typed length beside the cold store, and taken back.
+    drawn = pathlib.Path(folder) / "drawn.undertone"
+
+    def walls():
+        app.act("save-to", GLib.Variant("s", str(drawn)))
+        app.wait("the file", drawn.exists)
+        return json.loads(drawn.read_text())["storeys"][0]["walls"]
+
+    def click(x_m, y_m):
+        app.xdo("mousemove", *(a + b for a, b in zip(app.on_sheet(x_m, y_m), (3, 2))))
+        time.sleep(0.05)
+        app.xdo("mousemove", *app.on_sheet(x_m, y_m))
+        time.sleep(0.05)
+        app.xdo("click", 1)
+        time.sleep(0.45)  # a second click that is no double click
+
+    n_walls = len(walls())
+    app.act("tool", GLib.Variant("s", "wall"))
+    click(22, 6)
+    app.xdo("mousemove", *app.on_sheet(30, 6))
+    time.sleep(0.1)
+    app.xdo("key", "1", "0", "Return")
+    click(32, 12)
+    click(22, 12)
+    click(22, 6)
+    app.wait("the wall", lambda: "wall W" in app.description())
+    room = walls()[-1]
+    corners = [[round(a, 6) for a in point] for point in room["points"]]
+    (x0, y0), (x1, y1), (x2, y2), (x3, y3) = corners[:4]
+    tap.check("a room is drawn, square and closed",
+              same("walls", len(walls()), n_walls + 1) + same("corners", len(corners), 5) + same("closed", corners[4], corners[0])
+              + same("typed length", round(x1 - x0, 6), 10) + same("square", [y1, x2, y3], [y0, x1, y2]))
+    app.act("tool", GLib.Variant("s", "opening"))
+    app.drag(app.on_sheet(x0 + 4, y0), app.on_sheet(x0 + 6, y0))
+    app.wait("the opening", lambda: walls()[-1].get("openings"))
+    app.xdo("mousemove", *app.on_sheet(x0 + 5, y0), "click", 1)
+    app.wait("the door opened", lambda: not walls()[-1]["openings"][0].get("shut", True))
+    door = walls()[-1]["openings"][0]
+    tap.check("a door is drawn along its wall and opened by a click", [] if 1.5 < door["width_m"] < 2.5 and 3.5 < door["at_m"] < 4.5 else [f"{door}"])
+    app.act("tool", GLib.Variant("s", "select"))
+    app.drag(app.on_sheet(x2, y2), app.on_sheet(x2 + 3, y2))
+    app.wait("the corner moved", lambda: walls()[-1]["points"][2][0] > x2 + 2)
+    for _ in range(4):
+        app.act("undo")
+    app.wait("the walls of before", lambda: len(walls()) == n_walls)
+    app.act("save-to", GLib.Variant("s", str(moved)))
+    tap.check("corners are dragged, and all of it is undone", [])
+
     # Undo everything, save, and the bytes are those of the start.
     steps = 0
     while app.describe("undo")[0]:

@@ -1,11 +1,14 @@
 /* The desk without a window: selection, drags, steps, fields, and answers that are never stale. */
 #include <math.h>
+#include <string.h>
 
 #include "desk.h"
 #include "fields.h"
 #include "plan-read.h"
 #include "plan-write.h"
 #include "tool.h"
+#include "wall-tool.h"
+#include "walls.h"
 
 static UtDesk *
 open_desk (const char *name)
@@ -304,6 +307,283 @@ test_law_fields (void)
   g_assert_null (with (coefficient, "1, 2, 3 … floors", "9 -1"));
 }
 
+/* ---- walls ---- */
+
+static UtDesk *
+empty_desk (void)
+{
+  g_autoptr (UtPlan) plan = (UtPlan *) ut_plan_new_empty ();
+  g_autoptr (UtDocument) document = ut_document_new (plan);
+
+  return ut_desk_new (document);
+}
+
+static const UtWall *
+wall_of (UtDesk *desk, guint index)
+{
+  const UtStorey *storey = ut_plan_storey (ut_desk_plan (desk), 0);
+
+  g_assert_cmpuint (index, <, storey->walls->len);
+  return storey->walls->pdata[index];
+}
+
+static void
+assert_points (const UtWall *wall, const double (*points)[2], guint n)
+{
+  g_assert_cmpuint (wall->points->len, ==, n);
+  for (guint i = 0; i < n; i++)
+    {
+      g_assert_cmpfloat_with_epsilon (g_array_index (wall->points, UtPoint, i).x_m, points[i][0], 1e-9);
+      g_assert_cmpfloat_with_epsilon (g_array_index (wall->points, UtPoint, i).y_m, points[i][1], 1e-9);
+    }
+}
+
+static void
+click_wall (UtWallDraw *draw, UtDesk *desk, double x_m, double y_m)
+{
+  UtPointer pointer = at (x_m, y_m);
+
+  ut_wall_draw_hover (draw, desk, &pointer);
+  ut_wall_draw_click (draw, desk, &pointer, FALSE);
+}
+
+static void
+type (UtWallDraw *draw, const char *text)
+{
+  for (; *text != '\0'; text++)
+    g_assert_true (ut_wall_draw_type (draw, (gunichar) *text));
+}
+
+/* A room of 5 by 4 m: clicks near the right places, a length typed, closed on its first corner; then a door in it. */
+static void
+test_draw_room (void)
+{
+  g_autoptr (UtDesk) desk = empty_desk ();
+  g_autofree char *before = ut_plan_write (ut_desk_plan (desk), NULL), *after = NULL, *drawn = NULL, *redrawn = NULL;
+  UtWallDraw draw = { 0 };
+  UtOpeningDraw opening;
+  double length_m, direction_deg;
+
+  click_wall (&draw, desk, 1.01, 0.99);
+  UtPointer pointer = at (4, 1.1);
+  ut_wall_draw_hover (&draw, desk, &pointer);
+  g_assert_cmpint (draw.snap, ==, UT_SNAP_RIGHT_ANGLE);
+  type (&draw, "55");
+  g_assert_true (ut_wall_draw_type (&draw, '\b'));
+  g_assert_true (ut_wall_draw_piece (&draw, &length_m, &direction_deg));
+  g_assert_cmpfloat_with_epsilon (length_m, 5, 1e-9);
+  g_assert_cmpfloat_with_epsilon (direction_deg, 90, 1e-9);
+  ut_wall_draw_enter (&draw, desk);
+  click_wall (&draw, desk, 6.1, 5.02);
+  click_wall (&draw, desk, 3, 3); /* a mistake, taken back */
+  g_assert_true (ut_wall_draw_back (&draw));
+  click_wall (&draw, desk, 1.01, 4.95);
+  g_assert_cmpuint (ut_document_undo_label (ut_desk_document (desk)) == NULL, ==, TRUE);
+  click_wall (&draw, desk, 1.1, 1.1);
+  g_assert_cmpstr (ut_document_undo_label (ut_desk_document (desk)), ==, "Draw Wall W1");
+  assert_points (wall_of (desk, 0), (const double[][2]){ { 1, 1 }, { 6, 1 }, { 6, 5 }, { 1, 5 }, { 1, 1 } }, 5);
+  g_assert_cmpuint (ut_desk_plan (desk)->constructions->len, >=, 4);
+  g_assert_true (ut_selection_pick (ut_desk_selection (desk), 0)->kind == UT_KIND_WALL);
+  drawn = ut_plan_write (ut_desk_plan (desk), NULL);
+
+  pointer = at (6.05, 2);
+  ut_opening_draw_begin (&opening, desk, &pointer);
+  g_assert_true (opening.active);
+  pointer = at (5.9, 3.5);
+  ut_opening_draw_update (&opening, desk, &pointer);
+  ut_opening_draw_end (&opening, desk);
+  const UtOpening *door = wall_of (desk, 0)->openings->pdata[0];
+  g_assert_cmpfloat_with_epsilon (door->at_m, 6, 1e-9);
+  g_assert_cmpfloat_with_epsilon (door->width_m, 1.5, 1e-9);
+  g_assert_cmpstr (door->construction, ==, "door-40");
+  g_assert_true (door->shut);
+  pointer = at (6, 3);
+  ut_opening_draw_begin (&opening, desk, &pointer);
+  ut_opening_draw_end (&opening, desk);
+  g_assert_false (((const UtOpening *) wall_of (desk, 0)->openings->pdata[0])->shut);
+  g_assert_cmpstr (ut_document_undo_label (ut_desk_document (desk)), ==, "Open Door in W1");
+  pointer = at (3, 1);
+  ut_opening_draw_begin (&opening, desk, &pointer);
+  ut_opening_draw_end (&opening, desk);
+  g_assert_cmpfloat_with_epsilon (((const UtOpening *) wall_of (desk, 0)->openings->pdata[1])->width_m, 0.9, 1e-9);
+  for (int i = 0; i < 3; i++)
+    ut_desk_undo (desk);
+  redrawn = ut_plan_write (ut_desk_plan (desk), NULL);
+  g_assert_cmpstr (redrawn, ==, drawn);
+  ut_desk_undo (desk);
+  after = ut_plan_write (ut_desk_plan (desk), NULL);
+  g_assert_cmpstr (after, ==, before);
+  ut_wall_draw_clear (&draw);
+}
+
+/* Corners are dragged, put in and taken out; openings keep their place on their piece; walls are moved, cut, changed together and deleted. */
+static void
+test_edit_walls (void)
+{
+  g_autoptr (UtDesk) desk = empty_desk ();
+  UtWallDraw draw = { 0 };
+  UtSelectDrag drag;
+  UtPointer pointer = at (0, 0);
+  g_autofree char *refusal = NULL;
+
+  for (int i = 0; i < 3; i++)
+    click_wall (&draw, desk, (const double[]){ 0, 10, 10 }[i], (const double[]){ 0, 0, 8 }[i]);
+  g_assert_true (ut_wall_draw_end (&draw, desk));
+  ut_desk_apply (desk, ut_plan_with_opening (ut_desk_plan (desk), 0, 0, 12, 13), "Door", NULL);
+  g_assert_cmpfloat_with_epsilon (ut_wall_length_m (wall_of (desk, 0)), 18, 1e-9);
+
+  pointer = at (10.02, 0.05);
+  ut_select_begin (&drag, desk, &pointer);
+  g_assert_cmpint (drag.kind, ==, UT_DRAG_VERTEX);
+  pointer = at (12.01, 0.03);
+  ut_select_update (&drag, desk, &pointer);
+  ut_select_end (&drag, desk);
+  assert_points (wall_of (desk, 0), (const double[][2]){ { 0, 0 }, { 12, 0 }, { 10, 8 } }, 3);
+  /* The door stands 2 m along its piece, as before. */
+  g_assert_cmpfloat_with_epsilon (((const UtOpening *) wall_of (desk, 0)->openings->pdata[0])->at_m, 14, 1e-3);
+  g_assert_cmpstr (ut_document_undo_label (ut_desk_document (desk)), ==, "Move Corner of W1");
+
+  pointer = at (5, 0.05);
+  g_assert_true (ut_select_edit_wall (desk, &pointer, 1));
+  assert_points (wall_of (desk, 0), (const double[][2]){ { 0, 0 }, { 5, 0.05 }, { 12, 0 }, { 10, 8 } }, 4);
+  pointer = at (5, 0.05);
+  pointer.add = TRUE;
+  ut_select_click (desk, &pointer, 0);
+  assert_points (wall_of (desk, 0), (const double[][2]){ { 0, 0 }, { 12, 0 }, { 10, 8 } }, 3);
+  g_assert_cmpfloat_with_epsilon (((const UtOpening *) wall_of (desk, 0)->openings->pdata[0])->at_m, 14, 1e-2);
+
+  pointer = at (3, 0);
+  ut_select_begin (&drag, desk, &pointer);
+  g_assert_cmpint (drag.kind, ==, UT_DRAG_MOVE);
+  pointer = at (4, 2);
+  ut_select_update (&drag, desk, &pointer);
+  ut_select_end (&drag, desk);
+  assert_points (wall_of (desk, 0), (const double[][2]){ { 1, 2 }, { 13, 2 }, { 11, 10 } }, 3);
+  g_assert_cmpstr (ut_document_undo_label (ut_desk_document (desk)), ==, "Move W1");
+
+  ut_desk_apply (desk, ut_plan_with_wall_split (ut_desk_plan (desk), 0, 0, 1), "Cut", NULL);
+  assert_points (wall_of (desk, 0), (const double[][2]){ { 1, 2 }, { 13, 2 } }, 2);
+  assert_points (wall_of (desk, 1), (const double[][2]){ { 13, 2 }, { 11, 10 } }, 2);
+  g_assert_cmpuint (wall_of (desk, 0)->openings->len, ==, 0);
+  g_assert_cmpfloat_with_epsilon (((const UtOpening *) wall_of (desk, 1)->openings->pdata[0])->at_m, 2, 1e-2);
+
+  /* Both in a band; their construction is changed in one step. */
+  pointer = at (-1, -1);
+  ut_selection_clear (ut_desk_selection (desk));
+  ut_select_begin (&drag, desk, &pointer);
+  pointer = at (20, 20);
+  ut_select_update (&drag, desk, &pointer);
+  ut_select_end (&drag, desk);
+  g_assert_cmpuint (ut_selection_size (ut_desk_selection (desk)), ==, 2);
+  g_assert_cmpint (ut_fields_subject (desk), ==, UT_SUBJECT_WALL);
+  g_autofree char *ids = ut_fields_id (desk);
+  ut_desk_apply (desk, ut_fields_with (ut_desk_plan (desk), UT_SUBJECT_WALL, ids, field_index (UT_SUBJECT_WALL, "Construction"), "2", &refusal), "Change", NULL);
+  g_assert_cmpstr (wall_of (desk, 0)->construction, ==, "concrete-200");
+  g_assert_cmpstr (wall_of (desk, 1)->construction, ==, "concrete-200");
+  g_assert_null (ut_fields_with (ut_desk_plan (desk), UT_SUBJECT_WALL, ids, field_index (UT_SUBJECT_WALL, "Height"), "0", &refusal));
+  ut_desk_delete_selected (desk);
+  g_assert_cmpstr (ut_document_undo_label (ut_desk_document (desk)), ==, "Delete 2 Walls");
+  g_assert_cmpuint (ut_plan_storey (ut_desk_plan (desk), 0)->walls->len, ==, 0);
+  ut_desk_undo (desk);
+  g_assert_cmpuint (ut_plan_storey (ut_desk_plan (desk), 0)->walls->len, ==, 2);
+}
+
+/* What a point is drawn to, and that Alt leaves it where it is. */
+static void
+test_snap (void)
+{
+  g_autoptr (UtDesk) desk = empty_desk ();
+  UtWallDraw draw = { 0 };
+  UtPointer pointer;
+  UtSnap snap;
+  UtPoint point, from = { 3, 3 }, before = { 0, 0 };
+
+  click_wall (&draw, desk, 0, 0);
+  click_wall (&draw, desk, 8, 6);
+  g_assert_true (ut_wall_draw_end (&draw, desk));
+  pointer = at (7.9, 6.1);
+  point = ut_snap_point (ut_desk_plan (desk), &pointer, G_MAXUINT, NULL, NULL, &snap);
+  g_assert_true (snap == UT_SNAP_END && fabs (point.x_m - 8) < 1e-12 && fabs (point.y_m - 6) < 1e-12);
+  pointer = at (4.05, 3);
+  point = ut_snap_point (ut_desk_plan (desk), &pointer, G_MAXUINT, NULL, NULL, &snap);
+  g_assert_true (snap == UT_SNAP_WALL && fabs (point.y_m - 0.75 * point.x_m) < 1e-9);
+  pointer = at (1.03, 5.02); /* across the piece from (0, 0) to (3, 3) */
+  point = ut_snap_point (ut_desk_plan (desk), &pointer, 0, &from, &before, &snap);
+  g_assert_true (snap == UT_SNAP_RIGHT_ANGLE && fabs ((point.x_m - 3) + (point.y_m - 3)) < 1e-9);
+  pointer = at (20.004, 19.98);
+  point = ut_snap_point (ut_desk_plan (desk), &pointer, G_MAXUINT, NULL, NULL, &snap);
+  g_assert_true (snap == UT_SNAP_GRID && fabs (point.x_m - 20) < 1e-9 && fabs (point.y_m - 20) < 1e-9);
+  pointer.no_snap = TRUE;
+  point = ut_snap_point (ut_desk_plan (desk), &pointer, G_MAXUINT, NULL, NULL, &snap);
+  g_assert_true (snap == UT_SNAP_NONE && !(point.x_m > 20.004) && !(point.x_m < 20.004));
+}
+
+/* Random edits of every kind, undone until nothing is left: the first bytes again; redone: the last. */
+static void
+test_random_edits (void)
+{
+  g_autoptr (UtDesk) desk = empty_desk ();
+  GRand *rand = g_rand_new_with_seed (11);
+  g_autofree char *before = ut_plan_write (ut_desk_plan (desk), NULL), *undone = NULL, *last = NULL, *redone = NULL;
+
+  for (int edit = 0; edit < 2000; edit++)
+    {
+      const UtStorey *storey = ut_plan_storey (ut_desk_plan (desk), 0);
+      guint wall = storey->walls->len > 0 ? (guint) g_rand_int_range (rand, 0, (gint32) storey->walls->len) : 0;
+      const UtWall *at_wall = storey->walls->len > 0 ? storey->walls->pdata[wall] : NULL;
+      double x = g_rand_double_range (rand, 0, 30), y = g_rand_double_range (rand, 0, 20);
+      UtWallDraw draw = { 0 };
+
+      switch (at_wall == NULL ? 0 : g_rand_int_range (rand, 0, 9))
+        {
+        case 0:
+          for (int i = 0; i < 3; i++)
+            click_wall (&draw, desk, x + 3 * i, y + g_rand_double_range (rand, -2, 2));
+          ut_wall_draw_end (&draw, desk);
+          ut_wall_draw_clear (&draw);
+          break;
+        case 1:
+          ut_desk_apply (desk, ut_plan_with_vertex (ut_desk_plan (desk), 0, wall, (guint) g_rand_int_range (rand, 0, (gint32) at_wall->points->len), x, y), "v", NULL);
+          break;
+        case 2:
+          ut_desk_apply (desk, ut_plan_with_vertex_added (ut_desk_plan (desk), 0, wall, 0, x, y), "a", NULL);
+          break;
+        case 3:
+          ut_desk_apply (desk, ut_plan_without_vertex (ut_desk_plan (desk), 0, wall, 0), "r", NULL);
+          break;
+        case 4:
+          ut_desk_apply (desk, ut_plan_with_opening (ut_desk_plan (desk), 0, wall, 0.3, 1.2), "o", NULL);
+          break;
+        case 5:
+          ut_desk_apply (desk, ut_plan_with_wall_split (ut_desk_plan (desk), 0, wall, 1), "s", NULL);
+          break;
+        case 6:
+          ut_desk_place (desk, edit % 2 ? UT_KIND_CELL : UT_KIND_TERMINAL, storey->id, x, y);
+          break;
+        case 7:
+          ut_desk_nudge_selected (desk, 0.1, 0);
+          break;
+        default:
+          if (edit % 3 == 0)
+            ut_desk_delete_selected (desk);
+          break;
+        }
+    }
+  last = ut_plan_write (ut_desk_plan (desk), NULL);
+  g_autoptr (GPtrArray) faults = ut_faults_new ();
+  g_autoptr (UtPlan) again = (UtPlan *) ut_plan_read (last, strlen (last), faults);
+  g_assert_nonnull (again); /* whatever was done, it is a plan */
+  while (ut_document_undo_label (ut_desk_document (desk)) != NULL)
+    ut_desk_undo (desk);
+  undone = ut_plan_write (ut_desk_plan (desk), NULL);
+  g_assert_cmpstr (undone, ==, before);
+  while (ut_document_redo_label (ut_desk_document (desk)) != NULL)
+    ut_desk_redo (desk);
+  redone = ut_plan_write (ut_desk_plan (desk), NULL);
+  g_assert_cmpstr (redone, ==, last);
+  g_rand_free (rand);
+}
+
 int
 main (int argc, char **argv)
 {
@@ -317,5 +597,9 @@ main (int argc, char **argv)
   g_test_add_func ("/desk/field-edits", test_field_edits);
   g_test_add_func ("/desk/thread", test_thread);
   g_test_add_func ("/fields/laws", test_law_fields);
+  g_test_add_func ("/walls/room", test_draw_room);
+  g_test_add_func ("/walls/edits", test_edit_walls);
+  g_test_add_func ("/walls/snap", test_snap);
+  g_test_add_func ("/walls/random-edits", test_random_edits);
   return g_test_run ();
 }

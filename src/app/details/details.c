@@ -1,5 +1,7 @@
 #include "details.h"
 
+#include <string.h>
+
 #include <glib/gi18n.h>
 
 #include "compat.h"
@@ -82,7 +84,8 @@ commit (UtDetails *self, GtkWidget *editor)
       gtk_widget_add_css_class (editor, "refused");
       return;
     }
-  label = g_strconcat (_ ("Change"), " ", self->id != NULL ? self->id : "", self->id != NULL ? " " : "",
+  const char *of = self->subject == UT_SUBJECT_CELL || self->subject == UT_SUBJECT_TERMINAL ? self->id : NULL;
+  label = g_strconcat (_ ("Change"), " ", of != NULL ? of : "", of != NULL ? " " : "",
                        _ (ut_fields_field (self->subject, index_of (editor))->label), NULL);
   ut_desk_apply (self->desk, plan, label, NULL);
 }
@@ -196,8 +199,12 @@ show_heading (UtDetails *self)
     case UT_SUBJECT_TERMINAL:
       text = g_strdup_printf (_ ("Terminal %s"), self->id);
       break;
+    case UT_SUBJECT_WALL:
+      text = n == 1 ? g_strdup_printf (_ ("Wall %s"), strchr (self->id, UT_WALL_PICK_BREAK) + 1) : g_strdup_printf (ngettext ("%u wall selected", "%u walls selected", n), n);
+      break;
     case UT_SUBJECT_MANY:
-      text = g_strdup_printf (ngettext ("%u radio selected", "%u radios selected", n), n);
+      text = ut_selection_n_radios (ut_desk_selection (self->desk)) == n ? g_strdup_printf (ngettext ("%u radio selected", "%u radios selected", n), n)
+                                                                        : g_strdup_printf (ngettext ("%u thing selected", "%u things selected", n), n);
       break;
     }
   gtk_label_set_text (self->heading, text);
@@ -207,11 +214,10 @@ static void
 build (UtDetails *self)
 {
   GtkWidget *old = gtk_widget_get_next_sibling (GTK_WIDGET (self->refusal)), *grid = gtk_grid_new ();
-  UtSelection *selection = ut_desk_selection (self->desk);
 
   self->subject = ut_fields_subject (self->desk);
   g_free (self->id);
-  self->id = self->subject == UT_SUBJECT_CELL || self->subject == UT_SUBJECT_TERMINAL ? g_strdup (ut_selection_pick (selection, 0)->id) : NULL;
+  self->id = ut_fields_id (self->desk);
   self->showing = TRUE; /* editors that go lose their focus: that is no edit */
   g_ptr_array_set_size (self->editors, 0);
   if (GTK_IS_GRID (old))
@@ -252,7 +258,7 @@ choices_hold (UtDetails *self)
 static const UtRadio *
 shown_radio (UtDetails *self)
 {
-  if (self->desk == NULL || self->id == NULL)
+  if (self->desk == NULL || (self->subject != UT_SUBJECT_CELL && self->subject != UT_SUBJECT_TERMINAL))
     return NULL;
   return ut_plan_radio (ut_desk_plan (self->desk), self->subject == UT_SUBJECT_CELL ? UT_KIND_CELL : UT_KIND_TERMINAL, self->id);
 }
@@ -286,9 +292,10 @@ refresh (UtDetails *self)
 {
   UtSelection *selection = ut_desk_selection (self->desk);
   UtSubject subject = ut_fields_subject (self->desk);
-  const char *id = subject == UT_SUBJECT_CELL || subject == UT_SUBJECT_TERMINAL ? ut_selection_pick (selection, 0)->id : NULL;
+  g_autofree char *id = ut_fields_id (self->desk);
 
-  if (id != NULL && ut_plan_radio (ut_desk_plan (self->desk), ut_selection_pick (selection, 0)->kind, id) == NULL)
+  if ((subject == UT_SUBJECT_CELL || subject == UT_SUBJECT_TERMINAL)
+      && ut_plan_radio (ut_desk_plan (self->desk), ut_selection_pick (selection, 0)->kind, id) == NULL)
     return; /* about to be dropped from the selection */
   if (!self->built || subject != self->subject || g_strcmp0 (id, self->id) != 0 || !choices_hold (self))
     build (self);

@@ -10,10 +10,10 @@
 #include "plan-write.h"
 
 /* Which struct a field lies in. */
-typedef enum { IN_PLAN, IN_CARRIER, IN_PROPAGATION, IN_RADIO, IN_CELL, IN_TERMINAL } Home;
+typedef enum { IN_PLAN, IN_CARRIER, IN_PROPAGATION, IN_RADIO, IN_CELL, IN_TERMINAL, IN_WALL } Home;
 
 /* Choices whose words come from the plan. */
-typedef enum { FIXED, ANTENNAS, SERVING } Source;
+typedef enum { FIXED, ANTENNAS, SERVING, CONSTRUCTIONS } Source;
 
 typedef struct
 {
@@ -104,6 +104,11 @@ static const Row plan_rows[] = {
   PROPAGATION ("Correlation distance", "m", UT_FIELD_NUMBER, NULL, correlation_m),
 };
 
+static const Row wall_rows[] = {
+  { { N_ ("Construction"), NULL, UT_FIELD_CHOICE, NULL }, IN_WALL, AT (UtWall, construction), CONSTRUCTIONS, 0 },
+  { { N_ ("Height"), "m", UT_FIELD_NUMBER_OR_NONE, NULL }, IN_WALL, AT (UtWall, height_m), FIXED, 0 },
+};
+
 static const struct
 {
   const Row *rows;
@@ -112,6 +117,7 @@ static const struct
   [UT_SUBJECT_PLAN] = { plan_rows, G_N_ELEMENTS (plan_rows) },
   [UT_SUBJECT_CELL] = { cell_rows, G_N_ELEMENTS (cell_rows) },
   [UT_SUBJECT_TERMINAL] = { terminal_rows, G_N_ELEMENTS (terminal_rows) },
+  [UT_SUBJECT_WALL] = { wall_rows, G_N_ELEMENTS (wall_rows) },
   [UT_SUBJECT_MANY] = { NULL, 0 },
 };
 
@@ -124,9 +130,34 @@ ut_fields_subject (UtDesk *desk)
 
   if (ut_selection_size (selection) == 0)
     return UT_SUBJECT_PLAN;
+  if (ut_selection_n_radios (selection) == 0)
+    return UT_SUBJECT_WALL;
   if (ut_selection_size (selection) > 1)
     return UT_SUBJECT_MANY;
   return ut_selection_pick (selection, 0)->kind == UT_KIND_CELL ? UT_SUBJECT_CELL : UT_SUBJECT_TERMINAL;
+}
+
+char *
+ut_fields_id (UtDesk *desk)
+{
+  UtSelection *selection = ut_desk_selection (desk);
+  GString *ids;
+
+  switch (ut_fields_subject (desk))
+    {
+    case UT_SUBJECT_CELL:
+    case UT_SUBJECT_TERMINAL:
+      return g_strdup (ut_selection_pick (selection, 0)->id);
+    case UT_SUBJECT_WALL:
+      ids = g_string_new (NULL);
+      for (guint i = 0; i < ut_selection_size (selection); i++)
+        g_string_append_printf (ids, "%s%s", i > 0 ? "\n" : "", ut_selection_pick (selection, i)->id);
+      return g_string_free (ids, FALSE);
+    case UT_SUBJECT_PLAN:
+    case UT_SUBJECT_MANY:
+      break;
+    }
+  return NULL;
 }
 
 guint
@@ -149,6 +180,18 @@ ut_fields_applies (const UtPlan *plan, UtSubject subject, guint index)
   return laws == 0 || (laws & 1u << plan->propagation->law) != 0;
 }
 
+/* The first of the walls picked, or NULL. */
+static const UtWall *
+first_wall (const UtPlan *plan, const char *ids)
+{
+  g_auto (GStrv) picks = g_strsplit (ids, "\n", -1);
+  guint storey, wall;
+
+  if (picks[0] == NULL || !ut_plan_find_picked_wall (plan, picks[0], &storey, &wall))
+    return NULL;
+  return ut_plan_storey (plan, storey)->walls->pdata[wall];
+}
+
 /* The struct a row's field lies in, or NULL when the radio is gone. */
 static const void *
 home_of (const UtPlan *plan, const Row *row, UtSubject subject, const char *id)
@@ -161,6 +204,8 @@ home_of (const UtPlan *plan, const Row *row, UtSubject subject, const char *id)
       return plan->carrier;
     case IN_PROPAGATION:
       return plan->propagation;
+    case IN_WALL:
+      return first_wall (plan, id);
     case IN_RADIO:
     case IN_CELL:
     case IN_TERMINAL:
@@ -188,6 +233,10 @@ ut_fields_choices (const UtPlan *plan, UtSubject subject, guint index)
       g_strv_builder_add (choices, _ ("isotropic"));
       for (guint i = 0; i < plan->antennas->len; i++)
         g_strv_builder_add (choices, ut_plan_antenna (plan, i)->id);
+      break;
+    case CONSTRUCTIONS:
+      for (guint i = 0; i < plan->constructions->len; i++)
+        g_strv_builder_add (choices, ut_plan_construction (plan, i)->name);
       break;
     case SERVING:
       g_strv_builder_add (choices, _ ("the strongest"));
@@ -250,6 +299,8 @@ ut_fields_text (const UtPlan *plan, UtSubject subject, const char *id, guint ind
       return g_strdup_printf ("%d", ut_plan_find_antenna (plan, FIELD (char *, home, row)) + 1);
     case SERVING:
       return g_strdup_printf ("%d", FIELD (char *, home, row) == NULL ? 0 : ut_plan_find_cell (plan, FIELD (char *, home, row)) + 1);
+    case CONSTRUCTIONS:
+      return g_strdup_printf ("%d", ut_plan_find_construction (plan, FIELD (char *, home, row)));
     case FIXED:
       break;
     }
@@ -314,6 +365,8 @@ set_field (const UtPlan *plan, const Row *row, void *home, const char *text, cha
     case UT_FIELD_CHOICE:
       if (row->source == ANTENNAS)
         set_word (&FIELD (char *, home, row), position == 0 ? "isotropic" : ut_plan_antenna (plan, (guint) position - 1)->id);
+      else if (row->source == CONSTRUCTIONS)
+        set_word (&FIELD (char *, home, row), ut_plan_construction (plan, (guint) MIN (position, plan->constructions->len - 1))->id);
       else if (row->source == SERVING)
         set_word (&FIELD (char *, home, row), position == 0 ? NULL : ut_plan_cell (plan, (guint) position - 1)->radio.id);
       else
@@ -344,6 +397,33 @@ set_field (const UtPlan *plan, const Row *row, void *home, const char *text, cha
   return FALSE;
 }
 
+/* The field set in all walls picked; NULL where the text is refused. */
+static const UtPlan *
+with_walls (const UtPlan *plan, const Row *row, const char *ids, const char *text, char **refusal)
+{
+  g_auto (GStrv) picks = g_strsplit (ids, "\n", -1);
+  const UtPlan *with = ut_plan_ref (plan);
+
+  for (guint i = 0; picks[i] != NULL; i++)
+    {
+      guint storey, index;
+      const UtPlan *next;
+
+      if (!ut_plan_find_picked_wall (with, picks[i], &storey, &index))
+        continue;
+      g_autoptr (UtWall) wall = ut_wall_copy (ut_plan_storey (with, storey)->walls->pdata[index]);
+      if (!set_field (plan, row, wall, text, refusal))
+        {
+          ut_plan_unref (with);
+          return NULL;
+        }
+      next = ut_plan_with_wall (with, storey, (int) index, g_steal_pointer (&wall));
+      ut_plan_unref (with);
+      with = next;
+    }
+  return with;
+}
+
 static const UtPlan *
 with_field (const UtPlan *plan, const Row *row, UtSubject subject, const char *id, const char *text, char **refusal)
 {
@@ -363,6 +443,8 @@ with_field (const UtPlan *plan, const Row *row, UtSubject subject, const char *i
         g_autoptr (UtPropagation) propagation = ut_propagation_copy (plan->propagation);
         return set_field (plan, row, propagation, text, refusal) ? ut_plan_with_propagation (plan, g_steal_pointer (&propagation)) : NULL;
       }
+    case IN_WALL:
+      return with_walls (plan, row, id, text, refusal);
     case IN_RADIO:
     case IN_CELL:
     case IN_TERMINAL:

@@ -8,6 +8,7 @@ typedef enum
   UT_SUBJECT_PLAN, /* title, carrier and propagation: when nothing is selected */
   UT_SUBJECT_CELL,
   UT_SUBJECT_TERMINAL,
+  UT_SUBJECT_WALL, /* one, or several at once; its id holds all picks, one a line */
   UT_SUBJECT_MANY,
 } UtSubject;
 
@@ -31,6 +32,9 @@ typedef struct
 } UtField;
 
 UtSubject ut_fields_subject (UtDesk *desk);
+
+/* The id of what is selected, for the functions below: of a radio, or of all walls.  Transfer full, NULL: none. */
+char *ut_fields_id (UtDesk *desk);
 guint ut_fields_count (UtSubject subject);
 const UtField *ut_fields_field (UtSubject subject, guint index);
 
@@ -40,7 +44,7 @@ gboolean ut_fields_applies (const UtPlan *plan, UtSubject subject, guint index);
 /* The choices of a field in this plan (translated); transfer full, NULL for fields that are no choice. */
 char **ut_fields_choices (const UtPlan *plan, UtSubject subject, guint index);
 
-/* The present value as text; for switches "1" or "0", for choices the position.  id: of the radio. Transfer full. */
+/* The present value as text (of several walls: of the first); for switches "1" or "0", for choices the position. Transfer full. */
 char *ut_fields_text (const UtPlan *plan, UtSubject subject, const char *id, guint index);
 
 /* The plan with the field set from a text.  NULL with *refusal (transfer full) where the text is no value, or none that the plan may have. */

@@ -142,6 +142,174 @@ take_power_handle (const UtScene *scene, GArray *boxes)
   ut_boxes_take (boxes, x_px + UT_POWER_HANDLE_X_PX - 7, y_px - UT_POWER_HANDLE_PX - 8, 110, UT_POWER_HANDLE_PX + 8);
 }
 
+/* ---- walls: what is selected, what is being drawn ---- */
+
+static void
+trace (const UtScene *scene, cairo_t *cr, const GArray *points)
+{
+  for (guint i = 0; i < points->len; i++)
+    {
+      double x, y;
+
+      ut_view_to_sheet (scene->view, g_array_index (points, UtPoint, i).x_m, g_array_index (points, UtPoint, i).y_m, &x, &y);
+      if (i == 0)
+        cairo_move_to (cr, x, y);
+      else
+        cairo_line_to (cr, x, y);
+    }
+}
+
+static void
+draw_corner (const UtScene *scene, cairo_t *cr, double x_m, double y_m, double size_px)
+{
+  double x, y;
+
+  ut_view_to_sheet (scene->view, x_m, y_m, &x, &y);
+  cairo_rectangle (cr, x - size_px, y - size_px, 2 * size_px, 2 * size_px);
+  set_colour (cr, &scene->palette->sheet, 1);
+  cairo_fill_preserve (cr);
+  set_colour (cr, &scene->palette->ink, 1);
+  cairo_set_line_width (cr, 1.5);
+  cairo_stroke (cr);
+}
+
+/* A selected wall is underlaid; the only one shows its corners, to be dragged. */
+static void
+draw_selected_wall (const UtScene *scene, cairo_t *cr, const char *pick_id, gboolean only)
+{
+  const UtPlan *plan = ut_desk_plan (scene->desk);
+  guint storey, index;
+
+  if (!ut_plan_find_picked_wall (plan, pick_id, &storey, &index) || storey != scene->storey)
+    return;
+  const UtWall *wall = ut_plan_storey (plan, storey)->walls->pdata[index];
+  trace (scene, cr, wall->points);
+  cairo_set_line_width (cr, 9);
+  cairo_set_line_join (cr, CAIRO_LINE_JOIN_ROUND);
+  set_colour (cr, &scene->palette->ink, 0.22);
+  cairo_stroke (cr);
+  for (guint i = 0; i < wall->points->len && only; i++)
+    draw_corner (scene, cr, g_array_index (wall->points, UtPoint, i).x_m, g_array_index (wall->points, UtPoint, i).y_m, 4.5);
+}
+
+/* What the next point is drawn to, by a mark of its own. */
+static void
+draw_snap (const UtScene *scene, cairo_t *cr, double x, double y, UtSnap snap)
+{
+  set_colour (cr, &scene->palette->ink, 1);
+  cairo_set_line_width (cr, 1.5);
+  switch (snap)
+    {
+    case UT_SNAP_END:
+    case UT_SNAP_CLOSE:
+      cairo_rectangle (cr, x - 7, y - 7, 14, 14);
+      break;
+    case UT_SNAP_WALL:
+      cairo_move_to (cr, x - 7, y - 7);
+      cairo_line_to (cr, x + 7, y + 7);
+      cairo_move_to (cr, x - 7, y + 7);
+      cairo_line_to (cr, x + 7, y - 7);
+      break;
+    case UT_SNAP_RIGHT_ANGLE:
+      cairo_move_to (cr, x - 9, y);
+      cairo_line_to (cr, x - 9, y - 9);
+      cairo_line_to (cr, x, y - 9);
+      break;
+    case UT_SNAP_GRID:
+    case UT_SNAP_NONE:
+      cairo_arc (cr, x, y, 3, 0, 2 * G_PI);
+      break;
+    }
+  cairo_stroke (cr);
+}
+
+/* Labels leave the figure of the piece being drawn alone. */
+static void
+take_wall_figure (const UtScene *scene, GArray *boxes)
+{
+  double x, y, length_m, direction_deg;
+
+  if (scene->wall == NULL || !ut_wall_draw_piece (scene->wall, &length_m, &direction_deg))
+    return;
+  ut_view_to_sheet (scene->view, scene->wall->next.x_m, scene->wall->next.y_m, &x, &y);
+  ut_boxes_take (boxes, x - 10, y - 10, 120, 36);
+}
+
+static void
+draw_wall_in_progress (const UtScene *scene, cairo_t *cr)
+{
+  const UtWallDraw *draw = scene->wall;
+  double x, y, length_m, direction_deg;
+
+  if (draw == NULL)
+    return;
+  if (draw->points != NULL && draw->points->len > 0)
+    {
+      trace (scene, cr, draw->points);
+      cairo_set_line_width (cr, 3);
+      set_colour (cr, &scene->palette->ink, 0.8);
+      cairo_stroke_preserve (cr);
+      cairo_new_path (cr);
+      for (guint i = 0; i < draw->points->len; i++)
+        draw_corner (scene, cr, g_array_index (draw->points, UtPoint, i).x_m, g_array_index (draw->points, UtPoint, i).y_m, 3.5);
+    }
+  if (!draw->has_next)
+    return;
+  ut_view_to_sheet (scene->view, draw->next.x_m, draw->next.y_m, &x, &y);
+  if (ut_wall_draw_piece (draw, &length_m, &direction_deg))
+    {
+      const UtPoint *from = &g_array_index (draw->points, UtPoint, draw->points->len - 1);
+      g_autofree char *length = ut_report_figure (length_m, 2), *direction = ut_report_figure (direction_deg, 0);
+      g_autofree char *text = draw->typed != NULL ? g_strdup_printf ("%s| m, %s°", draw->typed->str, direction) : g_strdup_printf ("%s m, %s°", length, direction);
+      double from_x, from_y;
+
+      ut_view_to_sheet (scene->view, from->x_m, from->y_m, &from_x, &from_y);
+      cairo_set_dash (cr, (double[]){ 6, 4 }, 2, 0);
+      cairo_set_line_width (cr, 2);
+      set_colour (cr, &scene->palette->ink, 0.8);
+      cairo_move_to (cr, from_x, from_y);
+      cairo_line_to (cr, x, y);
+      cairo_stroke (cr);
+      cairo_set_dash (cr, NULL, 0, 0);
+      ut_text_draw (cr, text, x + 12, y + 8, 12, &scene->palette->ink, &scene->palette->sheet);
+    }
+  draw_snap (scene, cr, x, y, draw->snap);
+}
+
+/* The part of the wall that the opening will take. */
+static void
+draw_opening_in_progress (const UtScene *scene, cairo_t *cr)
+{
+  const UtOpeningDraw *draw = scene->opening;
+  const UtPlan *plan = ut_desk_plan (scene->desk);
+  double before_m = 0;
+
+  if (draw == NULL || !draw->active || draw->storey != scene->storey || draw->wall >= ut_plan_storey (plan, draw->storey)->walls->len)
+    return;
+  const GArray *points = ((const UtWall *) ut_plan_storey (plan, draw->storey)->walls->pdata[draw->wall])->points;
+  double from_m = MIN (draw->from_m, draw->to_m), to_m = MAX (draw->from_m, draw->to_m);
+  g_autofree char *length = ut_report_figure (to_m - from_m, 2);
+  g_autofree char *text = g_strconcat (length, " m", NULL);
+  for (guint i = 0; i + 1 < points->len; i++)
+    {
+      UtPoint a = g_array_index (points, UtPoint, i), b = g_array_index (points, UtPoint, i + 1);
+      double piece_m = hypot (b.x_m - a.x_m, b.y_m - a.y_m), first = (from_m - before_m) / piece_m, last = (to_m - before_m) / piece_m, x, y;
+
+      if (last > 0 && first < 1)
+        {
+          ut_view_to_sheet (scene->view, a.x_m + CLAMP (first, 0, 1) * (b.x_m - a.x_m), a.y_m + CLAMP (first, 0, 1) * (b.y_m - a.y_m), &x, &y);
+          cairo_move_to (cr, x, y);
+          ut_view_to_sheet (scene->view, a.x_m + CLAMP (last, 0, 1) * (b.x_m - a.x_m), a.y_m + CLAMP (last, 0, 1) * (b.y_m - a.y_m), &x, &y);
+          cairo_line_to (cr, x, y);
+          set_colour (cr, &scene->palette->ink, 0.5);
+          cairo_set_line_width (cr, 8);
+          cairo_stroke (cr);
+          ut_text_draw (cr, text, x + 10, y + 6, 12, &scene->palette->ink, &scene->palette->sheet);
+        }
+      before_m += piece_m;
+    }
+}
+
 static void
 draw_selection (const UtScene *scene, cairo_t *cr)
 {
@@ -154,6 +322,8 @@ draw_selection (const UtScene *scene, cairo_t *cr)
       const UtRadio *radio = ut_plan_radio (plan, pick->kind, pick->id);
       double x_px, y_px;
 
+      if (pick->kind == UT_KIND_WALL)
+        draw_selected_wall (scene, cr, pick->id, ut_selection_size (selection) == 1);
       if (radio == NULL || !is_here (scene, plan, radio))
         continue;
       place_of (scene, radio, &x_px, &y_px);
@@ -428,11 +598,14 @@ draw_living (const UtScene *scene, cairo_t *cr)
   options.boxes = boxes;
   ut_paint_take_radios (boxes, plan, &options);
   take_power_handle (scene, boxes);
+  take_wall_figure (scene, boxes);
   draw_interferers (scene, cr, boxes);
   draw_old_links (scene, cr, options);
   ut_paint_plan (cr, plan, ut_desk_answer (scene->desk), &options);
   draw_selection (scene, cr);
   draw_band (scene, cr);
+  draw_wall_in_progress (scene, cr);
+  draw_opening_in_progress (scene, cr);
   draw_key (scene, cr);
   draw_scale_bar (scene, cr);
   draw_north (scene, cr);

@@ -8,6 +8,7 @@
 #include "palette.h"
 #include "tool.h"
 #include "view.h"
+#include "wall-tool.h"
 
 typedef struct
 {
@@ -16,6 +17,8 @@ typedef struct
   const UtPalette *palette;
   guint storey;
   const UtSelectDrag *drag; /* for the band and the knob */
+  const UtWallDraw *wall;       /* being drawn; NULL: not this tool */
+  const UtOpeningDraw *opening;
   gboolean focused;
   int device_scale;
 } UtScene;

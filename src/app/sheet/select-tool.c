@@ -4,6 +4,8 @@
 
 #include "hit.h"
 #include "tool.h"
+#include "wall-tool.h"
+#include "walls.h"
 
 double
 ut_power_handle_px (const UtRadio *cell, double power_dbm)
@@ -36,16 +38,90 @@ hit_at (UtDesk *desk, const UtPointer *pointer, guint skip)
                  skip);
 }
 
-/* Kind and id of what was hit; a link stands for its terminal. */
+/* Kind and id (to be freed) of what was hit; a link stands for its terminal. */
 static gboolean
-picked (UtDesk *desk, const UtHit *hit, UtRadioKind *kind, const char **id)
+picked (UtDesk *desk, const UtHit *hit, guint storey, UtRadioKind *kind, char **id)
 {
   const UtPlan *plan = ut_desk_plan (desk);
 
-  if (hit->kind == UT_HIT_NOTHING)
+  switch (hit->kind)
+    {
+    case UT_HIT_NOTHING:
+      return FALSE;
+    case UT_HIT_WALL:
+      *kind = UT_KIND_WALL;
+      *id = ut_wall_pick_id (plan, storey, hit->index);
+      break;
+    case UT_HIT_CELL:
+      *kind = UT_KIND_CELL;
+      *id = g_strdup (ut_plan_cell (plan, hit->index)->radio.id);
+      break;
+    case UT_HIT_TERMINAL:
+    case UT_HIT_LINK:
+      *kind = UT_KIND_TERMINAL;
+      *id = g_strdup (ut_plan_terminal (plan, hit->index)->radio.id);
+      break;
+    }
+  return TRUE;
+}
+
+/* The one selected wall, if it is of this storey. */
+static gboolean
+one_wall (UtDesk *desk, guint storey, guint *wall)
+{
+  UtSelection *selection = ut_desk_selection (desk);
+  guint in_storey;
+
+  return ut_selection_size (selection) == 1 && ut_selection_pick (selection, 0)->kind == UT_KIND_WALL
+         && ut_plan_find_picked_wall (ut_desk_plan (desk), ut_selection_pick (selection, 0)->id, &in_storey, wall) && in_storey == storey;
+}
+
+gboolean
+ut_vertex_at (UtDesk *desk, const UtPointer *pointer, guint *wall, guint *vertex)
+{
+  const UtWall *at;
+
+  if (!one_wall (desk, pointer->storey, wall))
     return FALSE;
-  *kind = hit->kind == UT_HIT_CELL ? UT_KIND_CELL : UT_KIND_TERMINAL;
-  *id = hit->kind == UT_HIT_CELL ? ut_plan_cell (plan, hit->index)->radio.id : ut_plan_terminal (plan, hit->index)->radio.id;
+  at = ut_plan_storey (ut_desk_plan (desk), pointer->storey)->walls->pdata[*wall];
+  for (guint i = 0; i < at->points->len; i++)
+    {
+      const UtPoint *point = &g_array_index (at->points, UtPoint, i);
+
+      if (hypot (point->x_m - pointer->x_m, point->y_m - pointer->y_m) * pointer->px_per_m <= UT_VERTEX_PX)
+        {
+          *vertex = i;
+          return TRUE;
+        }
+    }
+  return FALSE;
+}
+
+gboolean
+ut_select_edit_wall (UtDesk *desk, const UtPointer *pointer, guint repeat)
+{
+  const UtPlan *plan = ut_document_plan (ut_desk_document (desk));
+  g_autofree char *label = NULL;
+  guint index, vertex, piece;
+
+  if (pointer->add && ut_vertex_at (desk, pointer, &index, &vertex))
+    {
+      const UtWall *wall = ut_plan_storey (plan, pointer->storey)->walls->pdata[index];
+
+      if (wall->points->len > 2)
+        {
+          label = g_strconcat (_ ("Take Corner out of"), " ", wall->id, NULL);
+          ut_desk_apply (desk, ut_plan_without_vertex (plan, pointer->storey, index, vertex), label, NULL);
+        }
+      return TRUE;
+    }
+  if (repeat == 0 || !one_wall (desk, pointer->storey, &index) || ut_vertex_at (desk, pointer, &index, &vertex))
+    return FALSE;
+  const UtWall *wall = ut_plan_storey (plan, pointer->storey)->walls->pdata[index];
+  if (ut_wall_distance_m (wall, pointer->x_m, pointer->y_m, NULL, &piece) * pointer->px_per_m > UT_REACH_PX)
+    return FALSE;
+  label = g_strconcat (_ ("Put Corner into"), " ", wall->id, NULL);
+  ut_desk_apply (desk, ut_plan_with_vertex_added (plan, pointer->storey, index, piece, pointer->x_m, pointer->y_m), label, NULL);
   return TRUE;
 }
 
@@ -55,9 +131,11 @@ ut_select_click (UtDesk *desk, const UtPointer *pointer, guint repeat)
   UtSelection *selection = ut_desk_selection (desk);
   UtHit hit = hit_at (desk, pointer, repeat);
   UtRadioKind kind;
-  const char *id;
+  g_autofree char *id = NULL;
 
-  if (!picked (desk, &hit, &kind, &id))
+  if (ut_select_edit_wall (desk, pointer, repeat))
+    return;
+  if (!picked (desk, &hit, pointer->storey, &kind, &id))
     {
       if (!pointer->add)
         ut_selection_clear (selection);
@@ -93,7 +171,7 @@ ut_select_begin (UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer)
   const UtRadio *cell = knob_at (desk, pointer);
   UtHit hit = hit_at (desk, pointer, 0);
   UtRadioKind kind;
-  const char *id;
+  g_autofree char *id = NULL;
 
   *drag = (UtSelectDrag){
     .x0_m = pointer->x_m,
@@ -109,7 +187,13 @@ ut_select_begin (UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer)
       drag->power0_dbm = cell->power_dbm;
       return;
     }
-  if (hit.kind == UT_HIT_LINK || !picked (desk, &hit, &kind, &id))
+  if (ut_vertex_at (desk, pointer, &drag->wall, &drag->vertex))
+    {
+      drag->kind = UT_DRAG_VERTEX;
+      drag->storey = pointer->storey;
+      return;
+    }
+  if (hit.kind == UT_HIT_LINK || !picked (desk, &hit, pointer->storey, &kind, &id))
     {
       drag->kind = UT_DRAG_BAND;
       return;
@@ -133,6 +217,32 @@ snapped (double value_m, const UtPointer *pointer)
   return pointer->no_snap ? value_m : round (value_m / step_m) * step_m;
 }
 
+/* Walls that lie in the band with all their corners. */
+static void
+select_walls_in_band (const UtPlan *plan, UtSelection *selection, guint storey, double low_x, double high_x, double low_y, double high_y)
+{
+  const UtStorey *of = ut_plan_storey (plan, storey);
+
+  for (guint w = 0; w < of->walls->len; w++)
+    {
+      const UtWall *wall = of->walls->pdata[w];
+      gboolean inside = TRUE;
+
+      for (guint i = 0; i < wall->points->len && inside; i++)
+        {
+          const UtPoint *point = &g_array_index (wall->points, UtPoint, i);
+
+          inside = point->x_m >= low_x && point->x_m <= high_x && point->y_m >= low_y && point->y_m <= high_y;
+        }
+      if (inside)
+        {
+          g_autofree char *id = ut_wall_pick_id (plan, storey, w);
+
+          ut_selection_add (selection, UT_KIND_WALL, id);
+        }
+    }
+}
+
 static void
 select_in_band (const UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer)
 {
@@ -153,6 +263,7 @@ select_in_band (const UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer
           && radio->y_m >= low_y && radio->y_m <= high_y)
         ut_selection_add (selection, is_cell ? UT_KIND_CELL : UT_KIND_TERMINAL, radio->id);
     }
+  select_walls_in_band (plan, selection, pointer->storey, low_x, high_x, low_y, high_y);
   ut_selection_thaw (selection);
 }
 
@@ -185,6 +296,16 @@ ut_select_update (UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer)
                                                    drag->power0_dbm + (drag->y1_m - drag->y0_m) * pointer->px_per_m * db_per_px));
         break;
       }
+    case UT_DRAG_VERTEX:
+      {
+        const GArray *points = ((const UtWall *) ut_plan_storey (drag->plan, drag->storey)->walls->pdata[drag->wall])->points;
+        guint beside = drag->vertex > 0 ? drag->vertex - 1 : 1;
+        UtSnap snap;
+        UtPoint to = ut_snap_point (drag->plan, pointer, drag->wall, &g_array_index (points, UtPoint, beside), NULL, &snap);
+
+        ut_desk_set_draft (desk, ut_plan_with_vertex (drag->plan, drag->storey, drag->wall, drag->vertex, to.x_m, to.y_m));
+        break;
+      }
     case UT_DRAG_NONE:
       break;
     }
@@ -205,6 +326,8 @@ ut_select_end (UtSelectDrag *drag, UtDesk *desk)
 
   if (drag->kind == UT_DRAG_MOVE && ut_desk_has_draft (desk))
     label = ut_desk_step_label (desk, _ ("Move"));
+  else if (drag->kind == UT_DRAG_VERTEX && ut_desk_has_draft (desk))
+    label = ut_desk_step_label (desk, _ ("Move Corner of"));
   else if (drag->kind == UT_DRAG_POWER && ut_desk_has_draft (desk))
     label = g_strconcat (_ ("Set Power of"), " ", drag->id, NULL);
   if (label != NULL)

@@ -9,6 +9,7 @@
 #include "plan-painter.h"
 #include "report.h"
 #include "tray.h"
+#include "wall-tool.h"
 
 #define FIT_MARGIN_PX 48
 #define ZOOM_STEP 1.2
@@ -24,6 +25,8 @@ struct _UtSheet
   guint storey;
   UtToolKind tool;
   UtSelectDrag drag;
+  UtWallDraw wall;       /* of the wall tool */
+  UtOpeningDraw opening; /* of the opening tool */
   UtStillLayer still;
   double pointer_x_px, pointer_y_px; /* last seen */
   double begin_x_px, begin_y_px;     /* of the drag, on the sheet */
@@ -54,7 +57,10 @@ describe (UtSheet *self)
     {
       const UtPick *pick = ut_selection_pick (selection, i);
       const UtRadio *radio = ut_plan_radio (plan, pick->kind, pick->id);
+      guint storey, wall;
 
+      if (pick->kind == UT_KIND_WALL && ut_plan_find_picked_wall (plan, pick->id, &storey, &wall))
+        g_string_append_printf (text, _ ("; wall %s selected"), ((const UtWall *) ut_plan_storey (plan, storey)->walls->pdata[wall])->id);
       if (radio == NULL)
         continue;
       g_autofree char *x = ut_report_figure (radio->x_m, 2), *y = ut_report_figure (radio->y_m, 2);
@@ -163,6 +169,8 @@ ut_sheet_snapshot (GtkWidget *widget, GtkSnapshot *snapshot)
     .palette = self->palette,
     .storey = self->storey,
     .drag = &self->drag,
+    .wall = self->tool == UT_TOOL_WALL ? &self->wall : NULL,
+    .opening = self->tool == UT_TOOL_OPENING ? &self->opening : NULL,
     .focused = gtk_widget_has_visible_focus (widget),
     .device_scale = gtk_widget_get_scale_factor (widget),
   };
@@ -220,7 +228,12 @@ released_cb (GtkGestureClick *gesture, int n_press, double x_px, double y_px, Ut
     return;
   if (self->tool == UT_TOOL_SELECT)
     ut_select_click (self->desk, &pointer, self->repeats);
-  else
+  else if (self->tool == UT_TOOL_WALL)
+    {
+      ut_wall_draw_click (&self->wall, self->desk, &pointer, self->repeats > 0);
+      gtk_widget_queue_draw (GTK_WIDGET (self));
+    }
+  else if (self->tool != UT_TOOL_OPENING)
     {
       place_at (self, self->tool == UT_TOOL_CELL ? UT_KIND_CELL : UT_KIND_TERMINAL, x_px, y_px);
       ut_sheet_set_tool (self, UT_TOOL_SELECT);
@@ -242,6 +255,8 @@ drag_begin_cb (GtkGestureDrag *gesture, double x_px, double y_px, UtSheet *self)
       ut_select_cancel (&self->drag, self->desk);
       ut_select_begin (&self->drag, self->desk, &pointer);
     }
+  if (self->desk != NULL && !self->panning && self->tool == UT_TOOL_OPENING)
+    ut_opening_draw_begin (&self->opening, self->desk, &pointer);
 }
 
 static void
@@ -262,6 +277,14 @@ drag_update_cb (GtkGestureDrag *gesture, double dx_px, double dy_px, UtSheet *se
   if (self->panning)
     {
       pan_to (self, dx_px, dy_px);
+      return;
+    }
+  if (self->opening.active)
+    {
+      pointer = pointer_at (self, self->begin_x_px + dx_px, self->begin_y_px + dy_px,
+                            gtk_event_controller_get_current_event_state (GTK_EVENT_CONTROLLER (gesture)));
+      ut_opening_draw_update (&self->opening, self->desk, &pointer);
+      gtk_widget_queue_draw (GTK_WIDGET (self));
       return;
     }
   /* What moves less than this is still a click. */
@@ -287,6 +310,8 @@ drag_end_cb (GtkGestureDrag *gesture, double dx_px, double dy_px, UtSheet *self)
   self->panning = FALSE;
   if (self->drag.kind != UT_DRAG_NONE)
     ut_select_end (&self->drag, self->desk);
+  if (self->opening.active)
+    ut_opening_draw_end (&self->opening, self->desk);
   gtk_widget_queue_draw (GTK_WIDGET (self));
 }
 
@@ -295,7 +320,7 @@ drag_cancel_cb (GtkGesture *gesture, GdkEventSequence *sequence, UtSheet *self)
 {
   (void) gesture;
   (void) sequence;
-  self->panning = FALSE;
+  self->panning = self->opening.active = FALSE;
   if (self->desk != NULL)
     ut_select_cancel (&self->drag, self->desk);
 }
@@ -319,9 +344,15 @@ pan_update_cb (GtkGestureDrag *gesture, double dx_px, double dy_px, UtSheet *sel
 static void
 motion_cb (GtkEventControllerMotion *controller, double x_px, double y_px, UtSheet *self)
 {
-  (void) controller;
   self->pointer_x_px = x_px;
   self->pointer_y_px = y_px;
+  if (self->desk != NULL && self->tool == UT_TOOL_WALL)
+    {
+      UtPointer pointer = pointer_at (self, x_px, y_px, gtk_event_controller_get_current_event_state (GTK_EVENT_CONTROLLER (controller)));
+
+      ut_wall_draw_hover (&self->wall, self->desk, &pointer);
+      gtk_widget_queue_draw (GTK_WIDGET (self));
+    }
 }
 
 /* The wheel over the knob's cell, when it is the one selected, turns its power. */
@@ -384,11 +415,37 @@ pinch_cb (GtkGestureZoom *gesture, double scale, UtSheet *self)
   zoom_about (self, self->pinch_scale * scale / self->view.scale_px_m, x_px, y_px);
 }
 
+/* Keys of the wall tool: a length, Enter, Escape. */
+static gboolean
+wall_key (UtSheet *self, guint key, GdkModifierType state)
+{
+  if ((state & (GDK_CONTROL_MASK | GDK_ALT_MASK)) != 0)
+    return FALSE;
+  switch (key)
+    {
+    case GDK_KEY_Return:
+    case GDK_KEY_KP_Enter:
+      ut_wall_draw_enter (&self->wall, self->desk);
+      return TRUE;
+    case GDK_KEY_Escape:
+      return ut_wall_draw_back (&self->wall);
+    case GDK_KEY_BackSpace:
+      return ut_wall_draw_type (&self->wall, '\b');
+    default:
+      return ut_wall_draw_type (&self->wall, gdk_keyval_to_unicode (key));
+    }
+}
+
 static gboolean
 key_cb (GtkEventControllerKey *controller, guint key, guint code, GdkModifierType state, UtSheet *self)
 {
   (void) controller;
   (void) code;
+  if (self->tool == UT_TOOL_WALL && self->desk != NULL && wall_key (self, key, state))
+    {
+      gtk_widget_queue_draw (GTK_WIDGET (self));
+      return GDK_EVENT_STOP;
+    }
   if (key == GDK_KEY_space && (state & (GDK_CONTROL_MASK | GDK_ALT_MASK)) == 0)
     {
       self->space_held = TRUE;
@@ -492,6 +549,8 @@ static void
 ut_sheet_dispose (GObject *object)
 {
   UtSheet *self = UT_SHEET (object);
+
+  ut_wall_draw_clear (&self->wall);
 
   if (self->desk != NULL)
     ut_select_cancel (&self->drag, self->desk);
@@ -599,6 +658,9 @@ ut_sheet_set_tool (UtSheet *self, UtToolKind tool)
   if (self->tool == tool)
     return;
   self->tool = tool;
+  ut_wall_draw_clear (&self->wall);
+  self->opening.active = FALSE;
+  gtk_widget_queue_draw (GTK_WIDGET (self));
   gtk_widget_set_cursor_from_name (GTK_WIDGET (self), tool == UT_TOOL_SELECT ? NULL : "crosshair");
   g_signal_emit (self, signals[TOOL_CHANGED], 0);
 }

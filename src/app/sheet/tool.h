@@ -13,10 +13,10 @@ typedef struct
   gboolean no_snap;  /* Alt */
 } UtPointer;
 
-typedef enum { UT_TOOL_SELECT, UT_TOOL_CELL, UT_TOOL_TERMINAL, UT_N_TOOLS } UtToolKind;
+typedef enum { UT_TOOL_SELECT, UT_TOOL_WALL, UT_TOOL_OPENING, UT_TOOL_CELL, UT_TOOL_TERMINAL, UT_N_TOOLS } UtToolKind;
 
 /* What a drag with the select tool is about. */
-typedef enum { UT_DRAG_NONE, UT_DRAG_MOVE, UT_DRAG_BAND, UT_DRAG_POWER } UtDragKind;
+typedef enum { UT_DRAG_NONE, UT_DRAG_MOVE, UT_DRAG_BAND, UT_DRAG_POWER, UT_DRAG_VERTEX } UtDragKind;
 
 typedef struct
 {
@@ -25,6 +25,7 @@ typedef struct
   double power0_dbm;             /* power drag: at its beginning */
   char *id;                      /* power drag: of the cell */
   const UtPlan *plan;            /* as it was when the drag began */
+  guint storey, wall, vertex;    /* vertex drag */
 } UtSelectDrag;
 
 /* Length of the power handle between lowest and highest power, and the place of its knob above the cell, in pixels. */
@@ -34,6 +35,7 @@ double ut_power_handle_px (const UtRadio *cell, double power_dbm);
 
 /* Pointers closer than this to a radio mean it. */
 #define UT_REACH_PX 12.0
+#define UT_VERTEX_PX 9.0
 
 /* Grid that moves snap to, fitted to the scale so that a step stays some pixels wide. */
 double ut_snap_step_m (double px_per_m);
@@ -41,7 +43,13 @@ double ut_snap_step_m (double px_per_m);
 /* A click selects what is under it; `repeat`: how often the same place was clicked before. */
 void ut_select_click (UtDesk *desk, const UtPointer *pointer, guint repeat);
 
-/* A drag moves what is selected, turns a selected cell's power up and down by its handle, or draws a band that selects. */
+/* The vertex of the one selected wall that is under the pointer; FALSE: none is. */
+gboolean ut_vertex_at (UtDesk *desk, const UtPointer *pointer, guint *wall, guint *vertex);
+
+/* A double click on the one selected wall puts a vertex there; Shift+click on a vertex takes it out.  FALSE: neither was meant. */
+gboolean ut_select_edit_wall (UtDesk *desk, const UtPointer *pointer, guint repeat);
+
+/* A drag moves what is selected, or a vertex of the one selected wall, turns a selected cell's power up and down by its handle, or draws a band that selects. */
 void ut_select_begin (UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer);
 void ut_select_update (UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer);
 void ut_select_end (UtSelectDrag *drag, UtDesk *desk);
