@@ -123,6 +123,45 @@ ignore_wheel_cb (GtkEventControllerScroll *controller, double dx, double dy, UtD
   return GDK_EVENT_STOP;
 }
 
+static void
+setup_choice_cb (GtkSignalListItemFactory *factory, GtkListItem *item)
+{
+  GtkWidget *label = gtk_label_new (NULL);
+
+  (void) factory;
+  gtk_label_set_xalign (GTK_LABEL (label), 0);
+  gtk_label_set_ellipsize (GTK_LABEL (label), PANGO_ELLIPSIZE_END);
+  gtk_label_set_width_chars (GTK_LABEL (label), 8);
+  gtk_label_set_max_width_chars (GTK_LABEL (label), 8);
+  gtk_widget_set_hexpand (label, TRUE);
+  gtk_list_item_set_child (item, label);
+}
+
+static void
+bind_choice_cb (GtkSignalListItemFactory *factory, GtkListItem *item)
+{
+  const char *text = gtk_string_object_get_string (gtk_list_item_get_item (item));
+
+  (void) factory;
+  gtk_label_set_text (GTK_LABEL (gtk_list_item_get_child (item)), text);
+  gtk_widget_set_tooltip_text (gtk_list_item_get_child (item), text);
+}
+
+/* The button shows what fits, so that a long choice does not widen the pane; the list shows all of it. */
+static GtkWidget *
+make_drop_down (char **choices)
+{
+  GtkWidget *drop = gtk_drop_down_new_from_strings ((const char *const *) choices);
+  g_autoptr (GtkListItemFactory) narrow = gtk_signal_list_item_factory_new ();
+  g_autoptr (GtkListItemFactory) wide = g_object_ref (gtk_drop_down_get_factory (GTK_DROP_DOWN (drop)));
+
+  g_signal_connect (narrow, "setup", G_CALLBACK (setup_choice_cb), NULL);
+  g_signal_connect (narrow, "bind", G_CALLBACK (bind_choice_cb), NULL);
+  gtk_drop_down_set_list_factory (GTK_DROP_DOWN (drop), wide);
+  gtk_drop_down_set_factory (GTK_DROP_DOWN (drop), narrow);
+  return drop;
+}
+
 static GtkWidget *
 make_editor (UtDetails *self, guint index)
 {
@@ -140,7 +179,7 @@ make_editor (UtDetails *self, guint index)
       g_auto (GStrv) choices = ut_fields_choices (ut_desk_plan (self->desk), self->subject, index);
       GtkEventController *wheel = gtk_event_controller_scroll_new (GTK_EVENT_CONTROLLER_SCROLL_VERTICAL);
 
-      editor = gtk_drop_down_new_from_strings ((const char *const *) choices);
+      editor = make_drop_down (choices);
       gtk_event_controller_set_propagation_phase (wheel, GTK_PHASE_CAPTURE);
       g_signal_connect (wheel, "scroll", G_CALLBACK (ignore_wheel_cb), self);
       gtk_widget_add_controller (editor, wheel);
