@@ -6,7 +6,7 @@
 #include <glib/gi18n.h>
 
 #include "plan-edit.h"
-#include "walls.h"
+#include "wall-edits.h"
 
 struct _UtDesk
 {

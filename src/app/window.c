@@ -5,6 +5,7 @@
 #include <glib/gi18n.h>
 
 #include "compat.h"
+#include "constructions.h"
 #include "report.h"
 #include "tray.h"
 #include "words.h"
@@ -254,6 +255,14 @@ select_cb (GSimpleAction *action, GVariant *parameter, gpointer self)
 }
 
 static void
+constructions_cb (GSimpleAction *action, GVariant *parameter, gpointer self)
+{
+  (void) action;
+  (void) parameter;
+  gtk_window_present (GTK_WINDOW (ut_constructions_new (UT_WINDOW (self)->desk, self)));
+}
+
+static void
 zoom_in_cb (GSimpleAction *action, GVariant *parameter, gpointer self)
 {
   (void) action;
@@ -336,6 +345,7 @@ static const GActionEntry actions[] = {
   { .name = "direction", .parameter_type = "s", .state = "'down'", .change_state = direction_cb },
   { .name = "aim", .parameter_type = "s", .state = "'least-power'", .change_state = aim_cb },
   { .name = "view", .state = "(1.0, 0.0, 0.0)", .change_state = keep_view_cb },
+  { .name = "constructions", .activate = constructions_cb },
   { .name = "tool", .parameter_type = "s", .state = "'select'", .change_state = tool_cb },
 };
 

@@ -312,6 +312,33 @@ ut_plan_without_terminal (const UtPlan *plan, int index)
 }
 
 const UtPlan *
+ut_plan_without_construction (const UtPlan *plan, int index)
+{
+  UtPlan *next = begin (plan);
+  g_ptr_array_remove_index (own_list (&next->constructions, &ut_kind_construction), (guint)index);
+  return next;
+}
+
+guint
+ut_plan_uses_of_construction (const UtPlan *plan, const char *id)
+{
+  guint uses = 0;
+  for (guint s = 0; s < plan->storeys->len; s++)
+    {
+      const UtStorey *storey = ut_plan_storey (plan, s);
+      uses += g_strcmp0 (storey->floor, id) == 0;
+      for (guint w = 0; w < storey->walls->len; w++)
+        {
+          const UtWall *wall = storey->walls->pdata[w];
+          uses += g_strcmp0 (wall->construction, id) == 0;
+          for (guint i = 0; i < wall->openings->len; i++)
+            uses += g_strcmp0 (((const UtOpening *)wall->openings->pdata[i])->construction, id) == 0;
+        }
+    }
+  return uses;
+}
+
+const UtPlan *
 ut_plan_with_wall (const UtPlan *plan, guint storey, int index, UtWall *wall)
 {
   UtStorey *changed = ut_storey_copy (ut_plan_storey (plan, storey));
@@ -362,4 +389,10 @@ ut_plan_free_wall_id (const UtPlan *plan, guint storey)
       if (ut_storey_find_wall (of, id) < 0)
         return g_steal_pointer (&id);
     }
+}
+
+char *
+ut_plan_free_construction_id (const UtPlan *plan)
+{
+  return free_id (plan, "K", ut_plan_find_construction);
 }

@@ -26,6 +26,12 @@ const UtPlan *ut_plan_without_cell (
     int index); /* terminals that named it become automatic; its measured gains go */
 const UtPlan *ut_plan_without_terminal (const UtPlan *plan, int index); /* its measured gains go */
 
+/* A construction that nothing uses goes; see ut_plan_uses_of_construction (). */
+const UtPlan *ut_plan_without_construction (const UtPlan *plan, int index);
+
+/* Walls, openings and floors that are made of it. */
+guint ut_plan_uses_of_construction (const UtPlan *plan, const char *id);
+
 /* Walls of a storey, by their index there. */
 const UtPlan *
 ut_plan_with_wall (const UtPlan *plan, guint storey, int index, UtWall *wall); /* -1: append */
@@ -35,3 +41,4 @@ const UtPlan *ut_plan_without_wall (const UtPlan *plan, guint storey, guint inde
 char *ut_plan_free_cell_id (const UtPlan *plan);
 char *ut_plan_free_terminal_id (const UtPlan *plan);
 char *ut_plan_free_wall_id (const UtPlan *plan, guint storey);
+char *ut_plan_free_construction_id (const UtPlan *plan);

@@ -2,9 +2,9 @@
 
 #include <math.h>
 
+#include "construction-slab.h"
 #include "material.h"
 #include "slab-fit.h"
-#include "slab.h"
 #include "wall-grid.h"
 
 /* Points closer to a line than this count as on it. Far below any drawing accuracy, far above rounding at site scale. */
@@ -12,10 +12,7 @@
 
 typedef struct
 {
-  double loss_db; /* NAN: by layers */
-  gboolean heavy;
-  UtSlab slab;
-  UtSlabLayer *layers;
+  UtConstructionSlab of;
   UtSlabFit *wall_fit, *floor_fit; /* of the averaged loss; NULL: evaluated each time */
 } Slab;
 
@@ -63,57 +60,6 @@ struct _UtWallIndex
   GArray *floors;                   /* of Floor */
   GPtrArray *warnings;
 };
-
-/* A construction that says no class is heavy when its layers come to more than this. */
-#define HEAVY_MM 100
-
-static gboolean
-is_heavy (const UtConstruction *construction)
-{
-  double thickness_mm = 0;
-
-  if (construction->wall_class != NULL)
-    return g_str_equal (construction->wall_class, "heavy");
-  for (guint i = 0; i < construction->layers->len; i++)
-    thickness_mm += ((const UtConstructionLayer *) construction->layers->pdata[i])->thickness_mm;
-  return thickness_mm > HEAVY_MM;
-}
-
-/* Prepares the slab of one construction. */
-static void
-slab_init (Slab *slab, const UtConstruction *construction, double frequency_hz)
-{
-  guint n = construction->layers->len;
-
-  slab->loss_db = construction->loss_db;
-  slab->heavy = is_heavy (construction);
-  if (n == 0)
-    return;
-  g_autofree UtLayer *layers = g_new (UtLayer, n);
-  for (guint i = 0; i < n; i++)
-    {
-      const UtConstructionLayer *from = construction->layers->pdata[i];
-      UtLayer *to = &layers[i];
-
-      to->thickness_m = from->thickness_mm / 1e3;
-      if (from->material == NULL)
-        {
-          to->relative_permittivity = from->relative_permittivity;
-          to->conductivity_s_m = from->conductivity_s_m;
-        }
-      else
-        {
-          UtRadioStatus status = ut_material_at (ut_material_find (from->material),
-                                                 frequency_hz,
-                                                 &to->relative_permittivity,
-                                                 &to->conductivity_s_m);
-          g_assert (status == UT_RADIO_OK); /* the plan was checked */
-        }
-    }
-  slab->layers = g_new (UtSlabLayer, n);
-  UtRadioStatus status = ut_slab_prepare (layers, n, frequency_hz, slab->layers, &slab->slab);
-  g_assert (status == UT_RADIO_OK);
-}
 
 /* Warns of each material of a construction in use that is outside its stated range, once a material. */
 static void
@@ -261,10 +207,10 @@ fit_new (const UtSlab *slab, double te_share)
 static void
 fit_slab (UtWallIndex *index, Slab *slab)
 {
-  if (slab->layers == NULL || !isnan (slab->loss_db))
+  if (slab->of.layers == NULL || !isnan (slab->of.loss_db))
     return;
-  slab->wall_fit = fit_new (&slab->slab, index->te_share_wall);
-  slab->floor_fit = fit_new (&slab->slab, index->te_share_floor);
+  slab->wall_fit = fit_new (&slab->of.slab, index->te_share_wall);
+  slab->floor_fit = fit_new (&slab->of.slab, index->te_share_floor);
 }
 
 UtWallIndex *
@@ -287,7 +233,7 @@ ut_wall_index_new (const UtPlan *plan)
   index->n_slabs = plan->constructions->len;
   index->slabs = g_new0 (Slab, index->n_slabs);
   for (guint i = 0; i < index->n_slabs; i++)
-    slab_init (&index->slabs[i], ut_plan_construction (plan, i), index->frequency_hz);
+    ut_construction_slab_init (&index->slabs[i].of, ut_plan_construction (plan, i), index->frequency_hz);
   index->pieces = g_array_new (FALSE, FALSE, sizeof (Piece));
   index->openings = g_array_new (FALSE, FALSE, sizeof (Opening));
   index->floors = g_array_new (FALSE, FALSE, sizeof (Floor));
@@ -316,7 +262,7 @@ ut_wall_index_unref (UtWallIndex *index)
     return;
   for (guint i = 0; i < index->n_slabs; i++)
     {
-      g_free (index->slabs[i].layers);
+      ut_construction_slab_clear (&index->slabs[i].of);
       g_free (index->slabs[i].wall_fit);
       g_free (index->slabs[i].floor_fit);
     }
@@ -385,12 +331,12 @@ set_loss (const UtWallIndex *index, const Ray *ray, UtCrossing *crossing, double
   double incidence_rad = acos (CLAMP (cos_incidence, 0, 1));
 
   crossing->incidence_deg = incidence_rad * (180 / G_PI);
-  if (isnan (slab->loss_db) && fit != NULL && !ray->spreads)
+  if (isnan (slab->of.loss_db) && fit != NULL && !ray->spreads)
     crossing->loss_db = crossing->loss_min_db = crossing->loss_max_db = ut_slab_fit_loss_db (fit, incidence_rad);
-  else if (isnan (slab->loss_db))
+  else if (isnan (slab->of.loss_db))
     {
       UtSlabLoss loss;
-      UtRadioStatus status = ut_slab_evaluate (&slab->slab, incidence_rad, te_share, index->averaged, &loss);
+      UtRadioStatus status = ut_slab_evaluate (&slab->of.slab, incidence_rad, te_share, index->averaged, &loss);
 
       g_assert (status == UT_RADIO_OK);
       crossing->loss_db = loss.loss_db;
@@ -398,9 +344,9 @@ set_loss (const UtWallIndex *index, const Ray *ray, UtCrossing *crossing, double
       crossing->loss_max_db = loss.loss_max_db;
     }
   else
-    crossing->loss_db = crossing->loss_min_db = crossing->loss_max_db = slab->loss_db;
+    crossing->loss_db = crossing->loss_min_db = crossing->loss_max_db = slab->of.loss_db;
   crossing->loss_db = CLAMP (crossing->loss_db, 0, index->loss_limit_db);
-  crossing->heavy = slab->heavy;
+  crossing->heavy = slab->of.heavy;
 }
 
 /* What stands at this spot of the piece: *construction is -1 for an opening that is not shut. */

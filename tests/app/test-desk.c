@@ -2,13 +2,16 @@
 #include <math.h>
 #include <string.h>
 
+#include "construction-edits.h"
+#include "construction-loss.h"
 #include "desk.h"
 #include "fields.h"
+#include "plan-edit.h"
 #include "plan-read.h"
 #include "plan-write.h"
 #include "tool.h"
 #include "wall-tool.h"
-#include "walls.h"
+#include "wall-edits.h"
 
 static UtDesk *
 open_desk (const char *name)
@@ -584,6 +587,71 @@ test_random_edits (void)
   g_rand_free (rand);
 }
 
+/* Applies a change that must be taken. */
+static void
+change (UtDesk *desk, const UtPlan *plan, const char *refusal)
+{
+  g_test_message ("%s", refusal != NULL ? refusal : "taken");
+  g_assert_nonnull (plan);
+  ut_desk_apply (desk, plan, "Change", NULL);
+}
+
+/* Constructions are added, given layers of every material and figures of their own, measured losses and classes; what would be no plan is refused. */
+static void
+test_constructions (void)
+{
+  g_autoptr (UtDesk) desk = empty_desk ();
+  g_autofree char *before = ut_plan_write (ut_desk_plan (desk), NULL), *after = NULL;
+  char *refusal = NULL;
+  const double normal[] = { 0, 60 };
+  UtConstructionLoss losses[2];
+
+  change (desk, ut_plan_with_new_construction (ut_desk_plan (desk), -1), NULL);
+  const UtConstruction *one = ut_plan_construction (ut_desk_plan (desk), 0);
+  g_assert_cmpstr (one->id, ==, "K1");
+  g_assert_cmpuint (one->layers->len, ==, 1);
+  for (guint material = 0; material <= ut_n_material_choices (); material++)
+    if (g_strcmp0 (ut_material_choices ()[material], "concrete") != 0)
+      change (desk, ut_plan_with_layer_material (ut_desk_plan (desk), 0, 0, material, &refusal), refusal);
+  g_assert_null (((const UtConstructionLayer *) ut_plan_construction (ut_desk_plan (desk), 0)->layers->pdata[0])->material);
+  change (desk, ut_plan_with_layer_figures (ut_desk_plan (desk), 0, 0, "4", "0", &refusal), refusal);
+  g_assert_null (ut_plan_with_layer_figures (ut_desk_plan (desk), 0, 0, "0.5", "0", &refusal));
+  g_clear_pointer (&refusal, g_free);
+  /* A lossless layer of permittivity 4, half a wave thick inside (a quarter outside), lets all through: known to be exact. */
+  double wave_mm = 299792.458 / ut_desk_plan (desk)->carrier->frequency_mhz;
+  char thickness[G_ASCII_DTOSTR_BUF_SIZE];
+  change (desk, ut_plan_with_layer_thickness (ut_desk_plan (desk), 0, 0, g_ascii_dtostr (thickness, sizeof thickness, wave_mm / 4), &refusal), refusal);
+  ut_construction_losses (ut_desk_plan (desk), ut_plan_construction (ut_desk_plan (desk), 0), normal, 2, losses);
+  g_assert_cmpfloat_with_epsilon (losses[0].exact_db, 0, 1e-9);
+  g_assert_cmpfloat (losses[0].averaged_db, >, 0.01);
+  g_assert_cmpfloat (losses[0].least_db, <=, losses[0].averaged_db);
+  g_assert_cmpfloat (losses[0].most_db, >=, losses[0].averaged_db);
+  g_assert_null (ut_plan_with_layer_thickness (ut_desk_plan (desk), 0, 0, "0", &refusal));
+  g_clear_pointer (&refusal, g_free);
+  g_assert_null (ut_plan_with_layer_thickness (ut_desk_plan (desk), 0, 0, "thick", &refusal));
+  g_clear_pointer (&refusal, g_free);
+  g_assert_null (ut_plan_without_layer (ut_desk_plan (desk), 0, 0, &refusal)); /* the last one */
+  g_clear_pointer (&refusal, g_free);
+  change (desk, ut_plan_with_layer_added (ut_desk_plan (desk), 0, &refusal), refusal);
+  change (desk, ut_plan_without_layer (ut_desk_plan (desk), 0, 0, &refusal), refusal);
+  change (desk, ut_plan_with_construction_class (ut_desk_plan (desk), 0, "heavy", &refusal), refusal);
+  change (desk, ut_plan_with_construction_name (ut_desk_plan (desk), 0, "Old wall", &refusal), refusal);
+  change (desk, ut_plan_with_construction_loss (ut_desk_plan (desk), 0, "12,5", &refusal), refusal);
+  ut_construction_losses (ut_desk_plan (desk), ut_plan_construction (ut_desk_plan (desk), 0), normal, 2, losses);
+  g_assert_true (!(losses[1].exact_db < 12.5) && !(losses[1].exact_db > 12.5));
+  change (desk, ut_plan_with_construction_loss (ut_desk_plan (desk), 0, "", &refusal), refusal);
+  g_assert_cmpuint (ut_plan_construction (ut_desk_plan (desk), 0)->layers->len, ==, 1);
+  change (desk, ut_plan_with_new_construction (ut_desk_plan (desk), 0), NULL);
+  g_assert_cmpstr (ut_plan_construction (ut_desk_plan (desk), 1)->id, ==, "K2");
+  g_assert_cmpstr (ut_plan_construction (ut_desk_plan (desk), 1)->wall_class, ==, "heavy");
+  g_assert_cmpuint (ut_plan_uses_of_construction (ut_desk_plan (desk), "K2"), ==, 0);
+  change (desk, ut_plan_without_construction (ut_desk_plan (desk), 1), NULL);
+  while (ut_document_undo_label (ut_desk_document (desk)) != NULL)
+    ut_desk_undo (desk);
+  after = ut_plan_write (ut_desk_plan (desk), NULL);
+  g_assert_cmpstr (after, ==, before);
+}
+
 int
 main (int argc, char **argv)
 {
@@ -597,6 +665,7 @@ main (int argc, char **argv)
   g_test_add_func ("/desk/field-edits", test_field_edits);
   g_test_add_func ("/desk/thread", test_thread);
   g_test_add_func ("/fields/laws", test_law_fields);
+  g_test_add_func ("/constructions", test_constructions);
   g_test_add_func ("/walls/room", test_draw_room);
   g_test_add_func ("/walls/edits", test_edit_walls);
   g_test_add_func ("/walls/snap", test_snap);

@@ -5,7 +5,7 @@
 #include "hit.h"
 #include "tool.h"
 #include "wall-tool.h"
-#include "walls.h"
+#include "wall-edits.h"
 
 double
 ut_power_handle_px (const UtRadio *cell, double power_dbm)

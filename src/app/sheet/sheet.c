@@ -430,7 +430,9 @@ wall_key (UtSheet *self, guint key, GdkModifierType state)
     case GDK_KEY_Escape:
       return ut_wall_draw_back (&self->wall);
     case GDK_KEY_BackSpace:
-      return ut_wall_draw_type (&self->wall, '\b');
+      if (!ut_wall_draw_type (&self->wall, '\b'))
+        ut_wall_draw_back (&self->wall);
+      return TRUE; /* never Delete of what is selected */
     default:
       return ut_wall_draw_type (&self->wall, gdk_keyval_to_unicode (key));
     }

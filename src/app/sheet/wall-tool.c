@@ -5,7 +5,7 @@
 #include <glib/gi18n.h>
 
 #include "hit.h"
-#include "walls.h"
+#include "wall-edits.h"
 
 /* A door, where a click is all there is (common practice). */
 #define DOOR_M 0.9

@@ -1,4 +1,4 @@
-#include "walls.h"
+#include "wall-edits.h"
 
 #include <math.h>
 #include <string.h>
