@@ -181,10 +181,27 @@ rename_in_storeys (UtPlan *plan, const char *from, const char *to)
 /* ---- edits ---- */
 
 const UtPlan *
-ut_plan_with_title (const UtPlan *plan, const char *title)
+ut_plan_with_text (const UtPlan *plan, UtPlanText which, const char *text)
 {
   UtPlan *next = begin (plan);
-  set_text (&next->title, title);
+  char **const texts[] = { &next->title,    &next->client, &next->prepared_by,
+                           &next->revision, &next->date,   &next->notes };
+  set_text (texts[which], text);
+  return next;
+}
+
+const UtPlan *
+ut_plan_with_title (const UtPlan *plan, const char *title)
+{
+  return ut_plan_with_text (plan, UT_PLAN_TITLE, title);
+}
+
+const UtPlan *
+ut_plan_with_site (const UtPlan *plan, UtSite *site)
+{
+  UtPlan *next = begin (plan);
+  ut_site_unref (next->site);
+  next->site = site;
   return next;
 }
 
@@ -265,6 +282,14 @@ ut_plan_with_construction (const UtPlan *plan, int index, UtConstruction *constr
 }
 
 const UtPlan *
+ut_plan_with_antenna (const UtPlan *plan, int index, UtAntenna *antenna)
+{
+  UtPlan *next = begin (plan);
+  set_item (own_list (&next->antennas, &ut_kind_antenna), &ut_kind_antenna, index, antenna);
+  return next;
+}
+
+const UtPlan *
 ut_plan_with_measured_gain (const UtPlan *plan,
                             const char *terminal,
                             const char *cell,
@@ -316,6 +341,60 @@ ut_plan_without_construction (const UtPlan *plan, int index)
 {
   UtPlan *next = begin (plan);
   g_ptr_array_remove_index (own_list (&next->constructions, &ut_kind_construction), (guint)index);
+  return next;
+}
+
+const UtPlan *
+ut_plan_without_antenna (const UtPlan *plan, int index)
+{
+  UtPlan *next = begin (plan);
+  g_ptr_array_remove_index (own_list (&next->antennas, &ut_kind_antenna), (guint)index);
+  return next;
+}
+
+guint
+ut_plan_uses_of_antenna (const UtPlan *plan, const char *id)
+{
+  guint uses = 0;
+  for (guint i = 0; i < plan->cells->len; i++)
+    uses += g_str_equal (ut_plan_cell (plan, i)->radio.antenna, id);
+  for (guint i = 0; i < plan->terminals->len; i++)
+    uses += g_str_equal (ut_plan_terminal (plan, i)->radio.antenna, id);
+  return uses;
+}
+
+const UtPlan *
+ut_plan_without_storey (const UtPlan *plan, guint index)
+{
+  const char *id = ut_plan_storey (plan, index)->id;
+  const UtPlan *next = ut_plan_ref (plan);
+  for (guint i = plan->cells->len; i-- > 0;)
+    if (g_str_equal (ut_plan_cell (plan, i)->radio.storey, id))
+      {
+        const UtPlan *without = ut_plan_without_cell (next, (int)i);
+        ut_plan_unref (next);
+        next = without;
+      }
+  for (guint i = plan->terminals->len; i-- > 0;)
+    if (g_str_equal (ut_plan_terminal (plan, i)->radio.storey, id))
+      {
+        const UtPlan *without = ut_plan_without_terminal (next, (int)i);
+        ut_plan_unref (next);
+        next = without;
+      }
+  UtPlan *last = begin (next);
+  g_ptr_array_remove_index (own_list (&last->storeys, &ut_kind_storey), index);
+  ut_plan_unref (next);
+  return last;
+}
+
+const UtPlan *
+ut_plan_with_storey_at (const UtPlan *plan, guint index, guint to)
+{
+  UtPlan *next = begin (plan);
+  GPtrArray *storeys = own_list (&next->storeys, &ut_kind_storey);
+  gpointer storey = g_ptr_array_steal_index (storeys, index);
+  g_ptr_array_insert (storeys, (int)to, storey);
   return next;
 }
 
@@ -377,6 +456,18 @@ char *
 ut_plan_free_terminal_id (const UtPlan *plan)
 {
   return free_id (plan, "T", ut_plan_find_terminal);
+}
+
+char *
+ut_plan_free_storey_id (const UtPlan *plan)
+{
+  return free_id (plan, "S", ut_plan_find_storey);
+}
+
+char *
+ut_plan_free_antenna_id (const UtPlan *plan)
+{
+  return free_id (plan, "A", ut_plan_find_antenna);
 }
 
 char *

@@ -5,7 +5,19 @@
 
 #include "plan.h"
 
+/* The texts of the title block and the notes. */
+typedef enum
+{
+  UT_PLAN_TITLE,
+  UT_PLAN_CLIENT,
+  UT_PLAN_PREPARED_BY,
+  UT_PLAN_REVISION,
+  UT_PLAN_DATE,
+  UT_PLAN_NOTES
+} UtPlanText;
+const UtPlan *ut_plan_with_text (const UtPlan *plan, UtPlanText which, const char *text);
 const UtPlan *ut_plan_with_title (const UtPlan *plan, const char *title);
+const UtPlan *ut_plan_with_site (const UtPlan *plan, UtSite *site);
 const UtPlan *ut_plan_with_carrier (const UtPlan *plan, UtCarrier *carrier);
 const UtPlan *ut_plan_with_propagation (const UtPlan *plan, UtPropagation *propagation);
 const UtPlan *ut_plan_with_cell (const UtPlan *plan, int index, UtCell *cell); /* -1: append */
@@ -32,6 +44,16 @@ const UtPlan *ut_plan_without_construction (const UtPlan *plan, int index);
 /* Walls, openings and floors that are made of it. */
 guint ut_plan_uses_of_construction (const UtPlan *plan, const char *id);
 
+const UtPlan *ut_plan_with_antenna (const UtPlan *plan, int index, UtAntenna *antenna); /* -1: append */
+/* An antenna that nothing uses goes. */
+const UtPlan *ut_plan_without_antenna (const UtPlan *plan, int index);
+guint ut_plan_uses_of_antenna (const UtPlan *plan, const char *id);
+
+/* A storey goes with the radios on it; one must be left. */
+const UtPlan *ut_plan_without_storey (const UtPlan *plan, guint index);
+/* The storey at `index` becomes the one at `to` in the list; nothing else changes. */
+const UtPlan *ut_plan_with_storey_at (const UtPlan *plan, guint index, guint to);
+
 /* Walls of a storey, by their index there. */
 const UtPlan *
 ut_plan_with_wall (const UtPlan *plan, guint storey, int index, UtWall *wall); /* -1: append */
@@ -41,4 +63,6 @@ const UtPlan *ut_plan_without_wall (const UtPlan *plan, guint storey, guint inde
 char *ut_plan_free_cell_id (const UtPlan *plan);
 char *ut_plan_free_terminal_id (const UtPlan *plan);
 char *ut_plan_free_wall_id (const UtPlan *plan, guint storey);
+char *ut_plan_free_storey_id (const UtPlan *plan);
+char *ut_plan_free_antenna_id (const UtPlan *plan);
 char *ut_plan_free_construction_id (const UtPlan *plan);

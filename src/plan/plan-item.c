@@ -26,6 +26,13 @@ ut_source_unref (JsonObject *source)
   g_mutex_unlock (&source_lock);
 }
 
+void
+ut_radio_set_fields (UtRadio *radio, JsonObject *fields)
+{
+  ut_source_unref (radio->fields);
+  radio->fields = fields;
+}
+
 static void
 key_set_default (const UtKey *key, gpointer item)
 {

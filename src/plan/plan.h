@@ -266,6 +266,9 @@ UT_DECLARE_ITEM (UtCell, ut_cell)
 UT_DECLARE_ITEM (UtTerminal, ut_terminal)
 UT_DECLARE_ITEM (UtMeasuredGain, ut_measured_gain)
 
+/* The planner's own columns of a radio that is not part of a plan yet; takes over `fields` (NULL: none). */
+void ut_radio_set_fields (UtRadio *radio, JsonObject *fields);
+
 /* An empty plan: 3750 MHz, 20 MHz, margin 3 dB, free space, averaged slabs, one storey "S1"; what
  * the window's New begins with. */
 const UtPlan *ut_plan_new_empty (void) G_GNUC_WARN_UNUSED_RESULT;
