@@ -1,7 +1,7 @@
 # Sourced by data/run.sh and tests/run.sh: installs the Debian packages that are missing, and builds.
 
 build_packages='gcc libc6-dev pkgconf meson ninja-build gettext libgtk-4-dev libjson-glib-dev liblapacke-dev libopenblas-dev
-  libcairo2-dev libpango1.0-dev libgdk-pixbuf-2.0-dev fonts-dejavu-core adwaita-icon-theme'
+  libcairo2-dev libpango1.0-dev libgdk-pixbuf-2.0-dev libpoppler-glib-dev librsvg2-common fonts-dejavu-core adwaita-icon-theme'
 
 # need PACKAGE...: installs those of them that are not there; stops with one message where that cannot be done.
 need () {

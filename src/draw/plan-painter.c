@@ -2,9 +2,8 @@
 
 #include <math.h>
 
-#include <gdk-pixbuf/gdk-pixbuf.h>
-
 #include "labels.h"
+#include "picture.h"
 #include "report.h"
 #include "text.h"
 #include "walls.h"
@@ -125,43 +124,14 @@ paint_grid (cairo_t *cr, const UtPaintOptions *options)
   cairo_stroke (cr);
 }
 
-/* A picture of cairo's from one of gdk-pixbuf's; NULL when the data is no picture. */
-static cairo_surface_t *
-decode_picture (const UtBackdrop *backdrop)
-{
-  g_autoptr (GInputStream) stream = g_memory_input_stream_new_from_bytes (backdrop->data);
-  g_autoptr (GdkPixbuf) pixbuf = gdk_pixbuf_new_from_stream (stream, NULL, NULL);
-  cairo_surface_t *surface;
-  int n_channels, from_stride, to_stride;
-  const guchar *from;
-  guchar *to;
-
-  if (pixbuf == NULL)
-    return NULL;
-  surface = cairo_image_surface_create (CAIRO_FORMAT_ARGB32, gdk_pixbuf_get_width (pixbuf), gdk_pixbuf_get_height (pixbuf));
-  n_channels = gdk_pixbuf_get_n_channels (pixbuf);
-  from = gdk_pixbuf_read_pixels (pixbuf);
-  from_stride = gdk_pixbuf_get_rowstride (pixbuf);
-  cairo_surface_flush (surface);
-  to = cairo_image_surface_get_data (surface);
-  to_stride = cairo_image_surface_get_stride (surface);
-  for (int y = 0; to != NULL && y < gdk_pixbuf_get_height (pixbuf); y++)
-    for (int x = 0; x < gdk_pixbuf_get_width (pixbuf); x++)
-      {
-        const guchar *pixel = from + y * from_stride + x * n_channels;
-        guint alpha = n_channels == 4 ? pixel[3] : 255;
-
-        ((guint32 *) (void *) (to + y * to_stride))[x] = alpha << 24 | (pixel[0] * alpha / 255) << 16 | (pixel[1] * alpha / 255) << 8 | pixel[2] * alpha / 255;
-      }
-  cairo_surface_mark_dirty (surface);
-  return surface;
-}
-
 static void
 paint_backdrop (cairo_t *cr, const UtBackdrop *backdrop, const UtPaintOptions *options)
 {
-  cairo_surface_t *picture = decode_picture (backdrop);
-  double x, y;
+  double x, y, width_x = backdrop->width_m * options->units_per_m, width_y = 0;
+
+  /* On paper, where a unit is a millimetre and not a pixel, the whole picture. */
+  cairo_user_to_device_distance (cr, &width_x, &width_y);
+  cairo_surface_t *picture = ut_picture_surface (backdrop->data, options->plates ? hypot (width_x, width_y) : INFINITY);
 
   if (picture == NULL)
     return;
