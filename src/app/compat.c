@@ -112,6 +112,23 @@ ut_compat_choose_file (GtkWindow *parent, gboolean save, const char *title, cons
   gtk_native_dialog_show (GTK_NATIVE_DIALOG (dialog)); /* the reference is given back in chosen_cb */
 }
 
+void
+ut_compat_choose_picture (GtkWindow *parent, const char *title, const char *kind, const char *const *types, UtFileChosen chosen, gpointer data)
+{
+  GtkFileChooserNative *dialog = gtk_file_chooser_native_new (title, parent, GTK_FILE_CHOOSER_ACTION_OPEN, NULL, NULL);
+  g_autoptr (GtkFileFilter) filter = gtk_file_filter_new ();
+  Choice *choice = g_new0 (Choice, 1);
+
+  choice->chosen = chosen;
+  choice->data = data;
+  gtk_file_filter_set_name (filter, kind);
+  for (guint i = 0; types[i] != NULL; i++)
+    gtk_file_filter_add_mime_type (filter, types[i]);
+  gtk_file_chooser_add_filter (GTK_FILE_CHOOSER (dialog), filter);
+  g_signal_connect (dialog, "response", G_CALLBACK (chosen_cb), choice);
+  gtk_native_dialog_show (GTK_NATIVE_DIALOG (dialog)); /* the reference is given back in chosen_cb */
+}
+
 static GtkWidget *
 message_new (GtkWindow *parent, GtkMessageType type, GtkButtonsType buttons, const char *heading, const char *text)
 {

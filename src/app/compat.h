@@ -17,6 +17,9 @@ const UtPalette *ut_compat_palette (void);
 typedef void (*UtFileChosen) (GFile *file, gpointer data);
 void ut_compat_choose_file (GtkWindow *parent, gboolean save, const char *title, const char *name, const char *suffix, UtFileChosen chosen, gpointer data);
 
+/* The same for opening, among files of these media types ("image/" and "image/png" alike begin one), under this name. */
+void ut_compat_choose_picture (GtkWindow *parent, const char *title, const char *kind, const char *const *types, UtFileChosen chosen, gpointer data);
+
 /* A message with one button. */
 void ut_compat_tell (GtkWindow *parent, const char *heading, const char *text);
 

@@ -1,12 +1,12 @@
 #include "desk.h"
 
 #include <math.h>
-#include <string.h>
 
 #include <glib/gi18n.h>
 
+#include "arrange.h"
+#include "fragment.h"
 #include "plan-edit.h"
-#include "wall-edits.h"
 
 struct _UtDesk
 {
@@ -16,11 +16,12 @@ struct _UtDesk
   UtSolving *solving;
   const UtPlan *draft;
   UtQuestion question;
+  guint storey;
 };
 
 G_DEFINE_FINAL_TYPE (UtDesk, ut_desk, G_TYPE_OBJECT)
 
-enum { PLAN_CHANGED, QUESTION_CHANGED, N_SIGNALS };
+enum { PLAN_CHANGED, QUESTION_CHANGED, STOREY_CHANGED, N_SIGNALS };
 static guint signals[N_SIGNALS];
 
 static void
@@ -40,6 +41,7 @@ ut_desk_class_init (UtDeskClass *class)
 {
   G_OBJECT_CLASS (class)->dispose = ut_desk_dispose;
   signals[PLAN_CHANGED] = g_signal_new ("plan-changed", UT_TYPE_DESK, G_SIGNAL_RUN_LAST, 0, NULL, NULL, NULL, G_TYPE_NONE, 0);
+  signals[STOREY_CHANGED] = g_signal_new ("storey-changed", UT_TYPE_DESK, G_SIGNAL_RUN_LAST, 0, NULL, NULL, NULL, G_TYPE_NONE, 0);
   signals[QUESTION_CHANGED] = g_signal_new ("question-changed", UT_TYPE_DESK, G_SIGNAL_RUN_LAST, 0, NULL, NULL, NULL, G_TYPE_NONE, 0);
 }
 
@@ -62,6 +64,8 @@ static void
 show_plan (UtDesk *self)
 {
   ask (self);
+  if (self->storey >= ut_desk_plan (self)->storeys->len)
+    ut_desk_set_storey (self, ut_desk_plan (self)->storeys->len - 1);
   g_signal_emit (self, signals[PLAN_CHANGED], 0);
   ut_selection_keep_to (self->selection, ut_desk_plan (self));
 }
@@ -99,6 +103,21 @@ const UtPlan *
 ut_desk_plan (UtDesk *self)
 {
   return self->draft != NULL ? self->draft : ut_document_plan (self->document);
+}
+
+guint
+ut_desk_storey (UtDesk *self)
+{
+  return self->storey;
+}
+
+void
+ut_desk_set_storey (UtDesk *self, guint storey)
+{
+  if (storey == self->storey || storey >= ut_desk_plan (self)->storeys->len)
+    return;
+  self->storey = storey;
+  g_signal_emit (self, signals[STOREY_CHANGED], 0);
 }
 
 gboolean
@@ -206,13 +225,6 @@ to_mm (double value_m)
 }
 
 static void
-move_radio (UtRadio *radio, const double *by_m)
-{
-  radio->x_m = to_mm (radio->x_m + by_m[0]);
-  radio->y_m = to_mm (radio->y_m + by_m[1]);
-}
-
-static void
 set_power (UtRadio *radio, const double *power_dbm)
 {
   radio->power_dbm = CLAMP (round (*power_dbm * 10) / 10, radio->power_min_dbm, radio->power_max_dbm);
@@ -221,17 +233,11 @@ set_power (UtRadio *radio, const double *power_dbm)
 const UtPlan *
 ut_desk_moved (UtDesk *self, const UtPlan *plan, double dx_m, double dy_m)
 {
-  const double by_m[2] = { dx_m, dy_m };
   const UtPlan *moved = ut_plan_ref (plan);
 
   for (guint i = 0; i < ut_selection_size (self->selection); i++)
     {
-      const UtPick *pick = ut_selection_pick (self->selection, i);
-      guint storey, wall;
-      const UtPlan *next = pick->kind != UT_KIND_WALL ? with_radio (moved, pick->kind, pick->id, move_radio, by_m)
-                           : ut_plan_find_picked_wall (moved, pick->id, &storey, &wall)
-                             ? ut_plan_with_wall_moved (moved, storey, wall, dx_m, dy_m)
-                             : ut_plan_ref (moved);
+      const UtPlan *next = ut_plan_with_pick_moved (moved, ut_selection_pick (self->selection, i), dx_m, dy_m);
 
       ut_plan_unref (moved);
       moved = next;
@@ -248,16 +254,7 @@ ut_plan_with_set_power (const UtPlan *plan, UtRadioKind kind, const char *id, do
 char *
 ut_desk_step_label (UtDesk *self, const char *verb)
 {
-  guint n = ut_selection_size (self->selection);
-  g_autofree char *many = ut_selection_n_radios (self->selection) == n ? g_strdup_printf (g_dngettext (NULL, "%u Radio", "%u Radios", n), n)
-                          : ut_selection_n_radios (self->selection) == 0 ? g_strdup_printf (g_dngettext (NULL, "%u Wall", "%u Walls", n), n)
-                                                                         : g_strdup_printf (g_dngettext (NULL, "%u Thing", "%u Things", n), n);
-  const char *one = n == 1 ? ut_selection_pick (self->selection, 0)->id : many;
-
-  /* Of a wall the own id alone. */
-  if (n == 1 && ut_selection_n_radios (self->selection) == 0)
-    one = strchr (one, UT_WALL_PICK_BREAK) + 1;
-  return g_strconcat (verb, " ", one, NULL);
+  return ut_selection_step_label (self->selection, verb);
 }
 
 /* The plan without one thing; transfer full. */
@@ -309,6 +306,43 @@ ut_desk_nudge_selected (UtDesk *self, double dx_m, double dy_m)
   selected = ut_selection_to_text (self->selection);
   coalesce = g_strconcat ("nudge\n", selected, NULL);
   ut_desk_apply (self, ut_desk_moved (self, ut_document_plan (self->document), dx_m, dy_m), label, coalesce);
+}
+
+void
+ut_desk_put_fragment (UtDesk *self, const UtPlan *fragment, double dx_m, double dy_m, gboolean own, const char *verb)
+{
+  g_autofree char *added = NULL;
+  const UtPlan *plan = ut_plan_with_fragment (ut_document_plan (self->document), fragment, self->storey, dx_m, dy_m, own, &added);
+
+  ut_desk_apply_and_select (self, plan, verb, added);
+}
+
+void
+ut_desk_apply_and_select (UtDesk *self, const UtPlan *plan, const char *verb, const char *picks)
+{
+  g_autoptr (UtSelection) coming = ut_selection_new ();
+  g_autofree char *label = NULL;
+
+  ut_selection_set_text (coming, picks);
+  if (ut_selection_size (coming) == 0)
+    {
+      ut_plan_unref (plan);
+      return;
+    }
+  label = ut_selection_step_label (coming, verb);
+  ut_desk_apply (self, plan, label, NULL);
+  ut_selection_set_text (self->selection, picks);
+}
+
+void
+ut_desk_duplicate_selected (UtDesk *self)
+{
+  g_autoptr (UtPlan) fragment = NULL;
+
+  if (ut_selection_size (self->selection) == 0)
+    return;
+  fragment = (UtPlan *) ut_plan_fragment (ut_document_plan (self->document), self->selection);
+  ut_desk_put_fragment (self, fragment, UT_DUPLICATE_M, -UT_DUPLICATE_M, TRUE, _ ("Duplicate"));
 }
 
 /* What a new radio is like: the last of its kind in the plan, or the usual small cell and hand-held terminal. */

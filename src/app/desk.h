@@ -8,7 +8,7 @@
 #define UT_TYPE_DESK (ut_desk_get_type ())
 G_DECLARE_FINAL_TYPE (UtDesk, ut_desk, UT, DESK, GObject)
 
-/* Signals: "plan-changed" (the plan shown became another: a step, an undo, a draft), "question-changed". */
+/* Signals: "plan-changed" (the plan shown became another: a step, an undo, a draft), "question-changed", "storey-changed" (another storey is shown). */
 UtDesk *ut_desk_new (UtDocument *document);
 
 UtDocument *ut_desk_document (UtDesk *desk);
@@ -17,6 +17,10 @@ UtSolving *ut_desk_solving (UtDesk *desk);
 
 /* The plan as shown: the draft while something is dragged, else the document's. Borrowed. */
 const UtPlan *ut_desk_plan (UtDesk *desk);
+
+/* Index of the storey that is shown and worked on. */
+guint ut_desk_storey (UtDesk *desk);
+void ut_desk_set_storey (UtDesk *desk, guint storey);
 
 /* A draft is shown and solved, but no step; it takes over `draft`. */
 void ut_desk_set_draft (UtDesk *desk, const UtPlan *draft);
@@ -46,6 +50,16 @@ char *ut_desk_step_label (UtDesk *desk, const char *verb);
 /* Steps on what is selected; nothing happens when nothing is. */
 void ut_desk_delete_selected (UtDesk *desk);
 void ut_desk_nudge_selected (UtDesk *desk, double dx_m, double dy_m);
+
+/* A step that adds `picks` (selection text) to the plan, which are selected then; verb: "Paste".  Takes over `plan`.  Nothing happens without picks. */
+void ut_desk_apply_and_select (UtDesk *desk, const UtPlan *plan, const char *verb, const char *picks);
+
+/* Puts a fragment on the storey shown (see ut_plan_with_fragment ()), as one step. */
+void ut_desk_put_fragment (UtDesk *desk, const UtPlan *fragment, double dx_m, double dy_m, gboolean own, const char *verb);
+
+/* What is selected once more, that much to the right and down. */
+#define UT_DUPLICATE_M 1.0
+void ut_desk_duplicate_selected (UtDesk *desk);
 
 /* Adds a radio at a place of a storey and selects it. */
 void ut_desk_place (UtDesk *desk, UtRadioKind kind, const char *storey, double x_m, double y_m);

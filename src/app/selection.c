@@ -2,6 +2,8 @@
 
 #include <string.h>
 
+#include <glib/gi18n.h>
+
 struct _UtSelection
 {
   GObject parent;
@@ -200,6 +202,21 @@ ut_selection_set_text (UtSelection *self, const char *text)
 }
 
 char *
+ut_selection_step_label (UtSelection *self, const char *verb)
+{
+  guint n = ut_selection_size (self);
+  g_autofree char *many = ut_selection_n_radios (self) == n   ? g_strdup_printf (ngettext ("%u Radio", "%u Radios", n), n)
+                          : ut_selection_n_radios (self) == 0 ? g_strdup_printf (ngettext ("%u Wall", "%u Walls", n), n)
+                                                              : g_strdup_printf (ngettext ("%u Thing", "%u Things", n), n);
+  const char *one = n == 1 ? ut_selection_pick (self, 0)->id : many;
+
+  /* Of a wall the own id alone. */
+  if (n == 1 && ut_selection_n_radios (self) == 0)
+    one = strchr (one, UT_WALL_PICK_BREAK) + 1;
+  return g_strconcat (verb, " ", one, NULL);
+}
+
+char *
 ut_wall_pick_id (const UtPlan *plan, guint storey, guint wall)
 {
   const UtStorey *of = ut_plan_storey (plan, storey);
@@ -220,6 +237,17 @@ ut_plan_find_picked_wall (const UtPlan *plan, const char *pick_id, guint *storey
   *storey = (guint) in_storey;
   *wall = (guint) index;
   return index >= 0;
+}
+
+int
+ut_plan_storey_of_pick (const UtPlan *plan, const UtPick *pick)
+{
+  const UtRadio *radio = ut_plan_radio (plan, pick->kind, pick->id);
+  guint storey, wall;
+
+  if (radio != NULL)
+    return ut_plan_find_storey (plan, radio->storey);
+  return pick->kind == UT_KIND_WALL && ut_plan_find_picked_wall (plan, pick->id, &storey, &wall) ? (int) storey : -1;
 }
 
 guint

@@ -36,6 +36,9 @@ void ut_selection_keep_to (UtSelection *selection, const UtPlan *plan);
 char *ut_selection_to_text (UtSelection *selection);
 void ut_selection_set_text (UtSelection *selection, const char *text);
 
+/* "Move C2", "Move 3 Radios": for steps about what is selected; verb is translated already. Transfer full. */
+char *ut_selection_step_label (UtSelection *selection, const char *verb);
+
 /* Begin a change of several parts that is told once, and end it. */
 void ut_selection_freeze (UtSelection *selection);
 void ut_selection_thaw (UtSelection *selection);
@@ -45,6 +48,9 @@ char *ut_wall_pick_id (const UtPlan *plan, guint storey, guint wall);
 
 /* Where a picked wall is; FALSE when the plan does not hold it. */
 gboolean ut_plan_find_picked_wall (const UtPlan *plan, const char *pick_id, guint *storey, guint *wall);
+
+/* Index of the storey that a picked thing is on, or -1. */
+int ut_plan_storey_of_pick (const UtPlan *plan, const UtPick *pick);
 
 /* Radios among what is selected. */
 guint ut_selection_n_radios (UtSelection *selection);

@@ -300,6 +300,55 @@ ut_plan_with_wall_split (const UtPlan *plan, guint storey, guint index, guint ve
   return ut_plan_with_wall (cut, storey, -1, second);
 }
 
+/* The same wall drawn from its other end. */
+static UtWall *
+turned_about (const UtWall *old)
+{
+  UtWall *wall = ut_wall_copy (old);
+  double length_m = ut_wall_length_m (old);
+  guint n = old->points->len;
+
+  for (guint i = 0; i < n; i++)
+    g_array_index (wall->points, UtPoint, i) = point_at (old, n - 1 - i);
+  for (guint i = 0; i < old->openings->len; i++)
+    {
+      const UtOpening *opening = old->openings->pdata[i];
+
+      set_at (wall, i, length_m - opening->at_m - opening->width_m);
+    }
+  return wall;
+}
+
+static gboolean
+meet (UtPoint one, UtPoint other)
+{
+  return hypot (one.x_m - other.x_m, one.y_m - other.y_m) < 1.5e-3;
+}
+
+const UtPlan *
+ut_plan_with_walls_joined (const UtPlan *plan, guint storey, guint first, guint second)
+{
+  const UtWall *a = wall_at (plan, storey, first), *b = wall_at (plan, storey, second);
+  UtPoint a0 = point_at (a, 0), a1 = point_at (a, a->points->len - 1), b0 = point_at (b, 0), b1 = point_at (b, b->points->len - 1);
+  gboolean at_beginning = !meet (a1, b0) && !meet (a1, b1);
+  g_autoptr (UtWall) head = at_beginning ? turned_about (a) : ut_wall_copy (a);
+  g_autoptr (UtWall) tail = meet (at_beginning ? a0 : a1, b0) ? ut_wall_copy (b) : turned_about (b);
+  double length_m = ut_wall_length_m (head);
+  UtWall *joined;
+
+  if (first == second || !meet (point_at (head, head->points->len - 1), point_at (tail, 0)))
+    return NULL;
+  joined = ut_wall_copy (head);
+  g_array_append_vals (joined->points, &g_array_index (tail->points, UtPoint, 1), tail->points->len - 1);
+  for (guint i = 0; i < tail->openings->len; i++)
+    {
+      g_ptr_array_add (joined->openings, (gpointer) ut_opening_ref (tail->openings->pdata[i]));
+      set_at (joined, joined->openings->len - 1, length_m + ((const UtOpening *) tail->openings->pdata[i])->at_m);
+    }
+  g_autoptr (UtPlan) longer = (UtPlan *) ut_plan_with_wall (plan, storey, (int) first, joined);
+  return ut_plan_without_wall (longer, storey, second);
+}
+
 /* ---- openings ---- */
 
 int

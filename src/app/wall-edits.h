@@ -23,6 +23,9 @@ const UtPlan *ut_plan_without_vertex (const UtPlan *plan, guint storey, guint wa
 /* The wall cut in two at a vertex that is not an end, openings each to their part; the second part gets a new id. */
 const UtPlan *ut_plan_with_wall_split (const UtPlan *plan, guint storey, guint wall, guint vertex) G_GNUC_WARN_UNUSED_RESULT;
 
+/* Two walls that share an end become one, of the first one's construction; the second goes.  NULL: they share none. */
+const UtPlan *ut_plan_with_walls_joined (const UtPlan *plan, guint storey, guint first, guint second) G_GNUC_WARN_UNUSED_RESULT;
+
 /* A shut opening from one place along the wall to another; and one that is there, shut or opened. */
 const UtPlan *ut_plan_with_opening (const UtPlan *plan, guint storey, guint wall, double from_m, double to_m) G_GNUC_WARN_UNUSED_RESULT;
 const UtPlan *ut_plan_with_opening_turned (const UtPlan *plan, guint storey, guint wall, guint opening) G_GNUC_WARN_UNUSED_RESULT;

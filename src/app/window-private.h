@@ -1,4 +1,4 @@
-/* What the two halves of the window share: window.c (its parts) and window-files.c (opening, saving, closing). */
+/* What the parts of the window share: window.c (its widgets), window-files.c (opening, saving, closing), window-edits.c (clipboard, order, storeys), window-backdrop.c. */
 #pragma once
 
 #include "details.h"
@@ -19,6 +19,7 @@ struct _UtWindow
   GtkAdjustment *hold_adjustment;
   GtkScale *hold_scale;
   GMenu *recent_menu;
+  GMenuModel *sheet_menu;
   gboolean showing; /* widgets are being brought to the desk's state */
 };
 
@@ -27,6 +28,14 @@ void ut_window_set_document (UtWindow *window, UtDocument *document);
 
 /* Actions of window-files.c, to be added to the window's. */
 void ut_window_add_file_actions (UtWindow *window);
+
+/* Actions of window-edits.c; and which of them have anything to act on. */
+void ut_window_add_edit_actions (UtWindow *window);
+void ut_window_show_edits (UtWindow *window);
+
+/* Actions of window-backdrop.c.  A file that is a picture or a PDF by its type becomes the storey's backdrop; FALSE: it is something else. */
+void ut_window_add_backdrop_actions (UtWindow *window);
+gboolean ut_window_take_picture (UtWindow *window, GFile *file);
 
 /* Asks when there is something unsaved; TRUE: the window stays for now. */
 gboolean ut_window_asks_before_closing (UtWindow *window);

@@ -12,7 +12,7 @@
 
 G_DEFINE_FINAL_TYPE (UtWindow, ut_window, GTK_TYPE_APPLICATION_WINDOW)
 
-static const char *const tool_words[] = { [UT_TOOL_SELECT] = "select", [UT_TOOL_WALL] = "wall", [UT_TOOL_OPENING] = "opening", [UT_TOOL_CELL] = "cell", [UT_TOOL_TERMINAL] = "terminal" };
+static const char *const tool_words[] = { [UT_TOOL_SELECT] = "select", [UT_TOOL_WALL] = "wall", [UT_TOOL_OPENING] = "opening", [UT_TOOL_CELL] = "cell", [UT_TOOL_TERMINAL] = "terminal", [UT_TOOL_MEASURE] = "measure", [UT_TOOL_BACKDROP] = "backdrop" };
 static const UtAim aims[] = { UT_AIM_LEAST_POWER, UT_AIM_EQUAL_MARGIN, UT_AIM_FEWEST_DROPPED, UT_AIM_AS_SET }; /* in the order of the drop-down */
 
 static void
@@ -78,11 +78,10 @@ show_storeys (UtWindow *self)
       gtk_string_list_append (names, name);
       same = same && g_str_equal (gtk_string_list_get_string (GTK_STRING_LIST (shown), i), name);
     }
-  if (same)
-    return;
   self->showing = TRUE;
-  gtk_drop_down_set_model (self->storey_drop, G_LIST_MODEL (names));
-  gtk_drop_down_set_selected (self->storey_drop, ut_sheet_storey (self->sheet));
+  if (!same)
+    gtk_drop_down_set_model (self->storey_drop, G_LIST_MODEL (names));
+  gtk_drop_down_set_selected (self->storey_drop, ut_desk_storey (self->desk));
   gtk_widget_set_visible (GTK_WIDGET (self->storey_drop), plan->storeys->len > 1);
   self->showing = FALSE;
 }
@@ -95,10 +94,33 @@ plan_changed_cb (UtWindow *self)
   show_storeys (self);
 }
 
+/* What is selected is shown: where none of it is on this storey, the storey of the first is. */
+static void
+show_selected_storey (UtWindow *self)
+{
+  UtSelection *selection = ut_desk_selection (self->desk);
+  const UtPlan *plan = ut_desk_plan (self->desk);
+  int first = -1;
+
+  for (guint i = 0; i < ut_selection_size (selection); i++)
+    {
+      int storey = ut_plan_storey_of_pick (plan, ut_selection_pick (selection, i));
+
+      if (storey == (int) ut_desk_storey (self->desk))
+        return;
+      if (first < 0)
+        first = storey;
+    }
+  if (first >= 0)
+    ut_desk_set_storey (self->desk, (guint) first);
+}
+
 static void
 selection_changed_cb (UtWindow *self)
 {
+  show_selected_storey (self);
   set_enabled (self, "delete", ut_selection_size (ut_desk_selection (self->desk)) > 0);
+  ut_window_show_edits (self);
 }
 
 /* The hold-in-hand slider goes from nothing to the headroom, where there is any. */
@@ -190,8 +212,8 @@ storey_chosen_cb (UtWindow *self)
 {
   guint chosen = gtk_drop_down_get_selected (self->storey_drop);
 
-  if (!self->showing && chosen != GTK_INVALID_LIST_POSITION && chosen != ut_sheet_storey (self->sheet))
-    ut_sheet_set_storey (self->sheet, chosen);
+  if (!self->showing && chosen != GTK_INVALID_LIST_POSITION && chosen != ut_desk_storey (self->desk))
+    ut_desk_set_storey (self->desk, chosen);
 }
 
 static void
@@ -310,7 +332,7 @@ aim_cb (GSimpleAction *action, GVariant *word, gpointer self)
   UtQuestion question = *ut_desk_question (UT_WINDOW (self)->desk);
 
   (void) action;
-  if (ut_aim_from_word (g_variant_get_string (word, NULL), &question.aim) && question.aim != UT_AIM_FEWEST_DROPPED)
+  if (ut_aim_from_word (g_variant_get_string (word, NULL), &question.aim))
     ut_desk_set_question (UT_WINDOW (self)->desk, &question);
 }
 
@@ -359,6 +381,8 @@ add_shortcuts (UtWindow *self)
   } shortcuts[] = {
     { "<Control>z", "win.undo" },   { "<Control><Shift>z", "win.redo" }, { "<Control>y", "win.redo" },
     { "Delete", "win.delete" },     { "BackSpace", "win.delete" },       { "<Control>a", "win.select-all" },
+    { "<Control>c", "win.copy" },   { "<Control>x", "win.cut" },         { "<Control>v", "win.paste" },
+    { "<Control>d", "win.duplicate" },
   };
   GtkEventController *controller = gtk_shortcut_controller_new ();
 
@@ -370,7 +394,7 @@ add_shortcuts (UtWindow *self)
   gtk_widget_add_controller (GTK_WIDGET (self), controller);
 }
 
-/* A plan dropped on the window is opened. */
+/* A plan dropped on the window is opened, a picture comes under the storey. */
 static gboolean
 file_dropped_cb (GtkDropTarget *target, const GValue *value, double x, double y, UtWindow *self)
 {
@@ -380,7 +404,8 @@ file_dropped_cb (GtkDropTarget *target, const GValue *value, double x, double y,
   (void) x;
   (void) y;
   for (GSList *item = files; item != NULL; item = item->next)
-    ut_window_open_file (UT_APPLICATION (gtk_window_get_application (GTK_WINDOW (self))), self, item->data);
+    if (!ut_window_take_picture (self, item->data))
+      ut_window_open_file (UT_APPLICATION (gtk_window_get_application (GTK_WINDOW (self))), self, item->data);
   return files != NULL;
 }
 
@@ -451,6 +476,7 @@ ut_window_class_init (UtWindowClass *class)
   gtk_widget_class_bind_template_child (widget_class, UtWindow, hold_adjustment);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, hold_scale);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, recent_menu);
+  gtk_widget_class_bind_template_child (widget_class, UtWindow, sheet_menu);
 }
 
 static void
@@ -461,6 +487,9 @@ ut_window_init (UtWindow *self)
   gtk_widget_init_template (GTK_WIDGET (self));
   g_action_map_add_action_entries (G_ACTION_MAP (self), actions, G_N_ELEMENTS (actions), self);
   ut_window_add_file_actions (self);
+  ut_window_add_edit_actions (self);
+  ut_window_add_backdrop_actions (self);
+  ut_sheet_set_menu (self->sheet, self->sheet_menu);
   ut_window_fill_recent (self);
   add_shortcuts (self);
   ut_tray_make_source (GTK_WIDGET (self->tray_cell), UT_KIND_CELL);
@@ -492,6 +521,7 @@ ut_window_set_document (UtWindow *self, UtDocument *document)
   ut_desk_set_question (desk, &question);
   g_set_object (&self->desk, desk);
   g_signal_connect_object (desk, "plan-changed", G_CALLBACK (plan_changed_cb), self, G_CONNECT_SWAPPED);
+  g_signal_connect_object (desk, "storey-changed", G_CALLBACK (show_storeys), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (desk, "question-changed", G_CALLBACK (question_changed_cb), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (ut_desk_selection (desk), "changed", G_CALLBACK (selection_changed_cb), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (ut_desk_solving (desk), "answered", G_CALLBACK (answered_cb), self, G_CONNECT_SWAPPED);

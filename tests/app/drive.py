@@ -261,6 +261,56 @@ with tempfile.TemporaryDirectory() as folder:
     app.act("save-to", GLib.Variant("s", str(moved)))
     tap.check("corners are dragged, and all of it is undone", [])
 
+    # A picture under the storey, brought to scale by two clicks and a typed length.
+    picture = pathlib.Path(folder) / "floor.svg"
+    picture.write_text("<svg xmlns='http://www.w3.org/2000/svg' width='400' height='300'><rect x='40' y='40' width='300' height='200' fill='none' stroke='#000'/></svg>")
+
+    def saved():
+        app.act("save-to", GLib.Variant("s", str(drawn)))
+        return json.loads(drawn.read_text())
+
+    app.act("storey-add")
+    app.wait("the new storey", lambda: len(saved()["storeys"]) == 2)
+    app.act("backdrop-take", GLib.Variant("s", str(picture)))
+    app.wait("the backdrop tool", lambda: app.describe("tool")[1] == "backdrop")
+    width = saved()["storeys"][1]["backdrop"]["width_m"]
+    (x0, y0), (x1, y1) = app.on_sheet(5, 5), app.on_sheet(15, 5)
+    for x, y in ((x0, y0), (x1, y1)):
+        app.xdo("mousemove", x, y)
+        time.sleep(0.1)
+        app.xdo("click", 1)
+        time.sleep(0.45)
+    app.wait("the marks", lambda: "as drawn" in app.description())
+    app.xdo("key", "2", "0", "Return")
+    app.wait("the scale", lambda: saved()["storeys"][1]["backdrop"]["width_m"] > width)
+    ratio = saved()["storeys"][1]["backdrop"]["width_m"] / width
+    pixel = 1 / app.describe("view")[1][0]
+    tap.check("two clicks and a length set the backdrop's scale", [] if abs(ratio - 2) < 0.4 * pixel + 0.01 else [f"{ratio}"])
+    app.act("undo")
+    app.act("undo")
+    app.act("undo")
+    app.act("tool", GLib.Variant("s", "select"))
+    app.wait("one storey", lambda: len(saved()["storeys"]) == 1)
+
+    # Box select, duplicate, copy and paste with the keys.
+    app.act("fit")
+    n_terminals = len(saved()["terminals"])
+    app.drag(app.on_sheet(6, 1), app.on_sheet(30, 13), 10)
+    app.wait("what is in the box", lambda: "T" in app.description().split("terminals")[1].split(".")[0] and "selected" in app.description())
+    app.xdo("key", "ctrl+d")
+    app.wait("the duplicates", lambda: len(saved()["terminals"]) > n_terminals)
+    n_more = len(saved()["terminals"]) - n_terminals
+    app.xdo("key", "ctrl+c")
+    time.sleep(0.2)
+    app.xdo("key", "ctrl+v")
+    app.wait("what was pasted", lambda: len(saved()["terminals"]) == n_terminals + 2 * n_more)
+    app.xdo("key", "ctrl+x")
+    app.wait("what was cut", lambda: len(saved()["terminals"]) == n_terminals + n_more)
+    app.xdo("key", "ctrl+z", "ctrl+z", "ctrl+z")
+    app.wait("all undone", lambda: len(saved()["terminals"]) == n_terminals)
+    tap.check("box select, duplicate, copy, paste and cut by keys", [] if n_more > 0 else ["nothing in the box"])
+    app.act("save-to", GLib.Variant("s", str(moved)))
+
     # Undo everything, save, and the bytes are those of the start.
     steps = 0
     while app.describe("undo")[0]:

@@ -41,16 +41,32 @@ editor_text (GtkWidget *editor)
   return g_strdup (gtk_editable_get_text (GTK_EDITABLE (editor)));
 }
 
+/* What the editor shows of the plan: nothing, where the things selected differ in it. */
+static char *
+shown_text (UtDetails *self, GtkWidget *editor)
+{
+  const UtPlan *plan = ut_desk_plan (self->desk);
+
+  if (!GTK_IS_SWITCH (editor) && ut_fields_mixed (plan, self->subject, self->id, index_of (editor)))
+    return GTK_IS_DROP_DOWN (editor) ? g_strdup_printf ("%u", GTK_INVALID_LIST_POSITION) : g_strdup ("");
+  return ut_fields_text (plan, self->subject, self->id, index_of (editor));
+}
+
 static void
 show_in_editor (UtDetails *self, GtkWidget *editor)
 {
-  g_autofree char *text = ut_fields_text (ut_desk_plan (self->desk), self->subject, self->id, index_of (editor));
-
-  gboolean applies = ut_fields_applies (ut_desk_plan (self->desk), self->subject, index_of (editor));
+  g_autofree char *text = shown_text (self, editor);
+  gboolean applies = ut_fields_applies (ut_desk_plan (self->desk), self->subject, self->id, index_of (editor));
+  gboolean mixed = ut_fields_mixed (ut_desk_plan (self->desk), self->subject, self->id, index_of (editor));
+  GtkWidget *group = g_object_get_data (G_OBJECT (editor), "group");
 
   gtk_widget_remove_css_class (editor, "refused");
   gtk_widget_set_visible (editor, applies);
   gtk_widget_set_visible (g_object_get_data (G_OBJECT (editor), "label"), applies);
+  if (group != NULL)
+    gtk_widget_set_visible (group, applies);
+  if (GTK_IS_ENTRY (editor))
+    gtk_entry_set_placeholder_text (GTK_ENTRY (editor), mixed ? _ ("mixed") : NULL);
   if (GTK_IS_SWITCH (editor))
     gtk_switch_set_active (GTK_SWITCH (editor), text[0] == '1');
   else if (GTK_IS_DROP_DOWN (editor))
@@ -69,7 +85,7 @@ commit (UtDetails *self, GtkWidget *editor)
   if (self->showing || self->desk == NULL)
     return;
   text = editor_text (editor);
-  before = ut_fields_text (ut_desk_plan (self->desk), self->subject, self->id, index_of (editor));
+  before = shown_text (self, editor);
   if (g_str_equal (text, before))
     {
       gtk_widget_remove_css_class (editor, "refused");
@@ -84,9 +100,14 @@ commit (UtDetails *self, GtkWidget *editor)
       gtk_widget_add_css_class (editor, "refused");
       return;
     }
-  const char *of = self->subject == UT_SUBJECT_CELL || self->subject == UT_SUBJECT_TERMINAL ? self->id : NULL;
-  label = g_strconcat (_ ("Change"), " ", of != NULL ? of : "", of != NULL ? " " : "",
-                       _ (ut_fields_field (self->subject, index_of (editor))->label), NULL);
+  if (self->subject == UT_SUBJECT_PLAN)
+    label = g_strconcat (_ ("Change"), " ", _ (ut_fields_field (self->subject, index_of (editor))->label), NULL);
+  else
+    {
+      g_autofree char *of = ut_desk_step_label (self->desk, _ ("Change"));
+
+      label = g_strconcat (of, " ", _ (ut_fields_field (self->subject, index_of (editor))->label), NULL);
+    }
   ut_desk_apply (self->desk, plan, label, NULL);
 }
 
@@ -215,8 +236,17 @@ add_field (UtDetails *self, GtkGrid *grid, guint index)
   gtk_widget_set_tooltip_text (label, text);
   gtk_label_set_mnemonic_widget (GTK_LABEL (label), editor);
   gtk_accessible_update_property (GTK_ACCESSIBLE (editor), GTK_ACCESSIBLE_PROPERTY_LABEL, text, -1);
-  gtk_grid_attach (grid, label, 0, (int) index, 1, 1);
-  gtk_grid_attach (grid, editor, 1, (int) index, 1, 1);
+  if (field->group != NULL)
+    {
+      GtkWidget *group = gtk_label_new (_ (field->group));
+
+      gtk_label_set_xalign (GTK_LABEL (group), 0);
+      gtk_widget_add_css_class (group, "group");
+      gtk_grid_attach (grid, group, 0, (int) (2 * index), 2, 1);
+      g_object_set_data (G_OBJECT (editor), "group", group);
+    }
+  gtk_grid_attach (grid, label, 0, (int) (2 * index + 1), 1, 1);
+  gtk_grid_attach (grid, editor, 1, (int) (2 * index + 1), 1, 1);
   g_object_set_data (G_OBJECT (editor), "label", label);
   g_ptr_array_add (self->editors, editor);
 }
@@ -233,17 +263,19 @@ show_heading (UtDetails *self)
       text = g_strdup (_ ("Plan"));
       break;
     case UT_SUBJECT_CELL:
-      text = g_strdup_printf (_ ("Cell %s"), self->id);
+      text = n == 1 ? g_strdup_printf (_ ("Cell %s"), self->id) : g_strdup_printf (ngettext ("%u cell selected", "%u cells selected", n), n);
       break;
     case UT_SUBJECT_TERMINAL:
-      text = g_strdup_printf (_ ("Terminal %s"), self->id);
+      text = n == 1 ? g_strdup_printf (_ ("Terminal %s"), self->id) : g_strdup_printf (ngettext ("%u terminal selected", "%u terminals selected", n), n);
       break;
     case UT_SUBJECT_WALL:
       text = n == 1 ? g_strdup_printf (_ ("Wall %s"), strchr (self->id, UT_WALL_PICK_BREAK) + 1) : g_strdup_printf (ngettext ("%u wall selected", "%u walls selected", n), n);
       break;
+    case UT_SUBJECT_RADIOS:
+      text = g_strdup_printf (ngettext ("%u radio selected", "%u radios selected", n), n);
+      break;
     case UT_SUBJECT_MANY:
-      text = ut_selection_n_radios (ut_desk_selection (self->desk)) == n ? g_strdup_printf (ngettext ("%u radio selected", "%u radios selected", n), n)
-                                                                        : g_strdup_printf (ngettext ("%u thing selected", "%u things selected", n), n);
+      text = g_strdup_printf (ngettext ("%u thing selected", "%u things selected", n), n);
       break;
     }
   gtk_label_set_text (self->heading, text);
@@ -293,11 +325,11 @@ choices_hold (UtDetails *self)
   return TRUE;
 }
 
-/* The radio shown, or NULL. */
+/* The one radio shown, or NULL. */
 static const UtRadio *
 shown_radio (UtDetails *self)
 {
-  if (self->desk == NULL || (self->subject != UT_SUBJECT_CELL && self->subject != UT_SUBJECT_TERMINAL))
+  if (self->desk == NULL || ut_selection_size (ut_desk_selection (self->desk)) != 1 || (self->subject != UT_SUBJECT_CELL && self->subject != UT_SUBJECT_TERMINAL))
     return NULL;
   return ut_plan_radio (ut_desk_plan (self->desk), self->subject == UT_SUBJECT_CELL ? UT_KIND_CELL : UT_KIND_TERMINAL, self->id);
 }
@@ -329,12 +361,10 @@ show_polar (UtDetails *self)
 static void
 refresh (UtDetails *self)
 {
-  UtSelection *selection = ut_desk_selection (self->desk);
   UtSubject subject = ut_fields_subject (self->desk);
   g_autofree char *id = ut_fields_id (self->desk);
 
-  if ((subject == UT_SUBJECT_CELL || subject == UT_SUBJECT_TERMINAL)
-      && ut_plan_radio (ut_desk_plan (self->desk), ut_selection_pick (selection, 0)->kind, id) == NULL)
+  if (!ut_fields_held (ut_desk_plan (self->desk), subject, id))
     return; /* about to be dropped from the selection */
   if (!self->built || subject != self->subject || g_strcmp0 (id, self->id) != 0 || !choices_hold (self))
     build (self);
@@ -360,6 +390,7 @@ ut_details_set_desk (UtDetails *self, UtDesk *desk)
   if (desk == NULL)
     return;
   g_signal_connect_object (desk, "plan-changed", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
+  g_signal_connect_object (desk, "storey-changed", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (ut_desk_selection (desk), "changed", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
   refresh (self);
 }

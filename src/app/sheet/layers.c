@@ -8,6 +8,7 @@
 #include "labels.h"
 #include "plan-painter.h"
 #include "report.h"
+#include "storey-edits.h"
 #include "text.h"
 
 #define MARK_PX 10.0
@@ -42,14 +43,40 @@ same_view (const UtView *one, const UtView *other)
            || one->origin_y_px > other->origin_y_px);
 }
 
+static gboolean
+same_ghost (const UtStillLayer *layer, const UtScene *scene, const UtPlan *plan)
+{
+  int below = ut_plan_storey_below (plan, scene->storey);
+
+  return !scene->ghost
+         || (ut_plan_storey_below (layer->plan, scene->storey) == below
+             && (below < 0 || layer->plan->storeys->pdata[below] == plan->storeys->pdata[below]));
+}
+
 /* The kept picture still shows what it should: moving a radio changes neither storeys nor constructions. */
 static gboolean
 still_holds (const UtStillLayer *layer, const UtScene *scene, const UtPlan *plan)
 {
   return layer->node != NULL && layer->storey == scene->storey && layer->palette == scene->palette && layer->device_scale == scene->device_scale
          && same_view (&layer->view, scene->view) && layer->plan->storeys->len == plan->storeys->len
-         && layer->plan->storeys->pdata[scene->storey] == plan->storeys->pdata[scene->storey] && layer->plan->constructions->len == plan->constructions->len
+         && layer->plan->storeys->pdata[scene->storey] == plan->storeys->pdata[scene->storey] && same_ghost (layer, scene, plan) && layer->plan->constructions->len == plan->constructions->len
          && memcmp (layer->plan->constructions->pdata, plan->constructions->pdata, plan->constructions->len * sizeof (gpointer)) == 0;
+}
+
+/* The walls of the storey below, faint. */
+static void
+draw_ghost (cairo_t *cr, const UtPlan *plan, UtPaintOptions options)
+{
+  int below = ut_plan_storey_below (plan, options.storey);
+
+  if (below < 0)
+    return;
+  options.storey = (guint) below;
+  options.grid = FALSE;
+  cairo_push_group (cr);
+  ut_paint_plan (cr, plan, NULL, &options);
+  cairo_pop_group_to_source (cr);
+  cairo_paint_with_alpha (cr, 0.22);
 }
 
 static void
@@ -65,7 +92,9 @@ make_still_layer (UtStillLayer *layer, const UtScene *scene, const UtPlan *plan)
   cr = cairo_create (picture);
   cairo_set_source_rgb (cr, scene->palette->sheet.red, scene->palette->sheet.green, scene->palette->sheet.blue);
   cairo_paint (cr);
-  options.grid = options.walls = TRUE;
+  options.grid = options.walls = options.plates = TRUE;
+  if (scene->ghost)
+    draw_ghost (cr, plan, options);
   ut_paint_plan (cr, plan, NULL, &options);
   cairo_destroy (cr);
 
@@ -308,6 +337,74 @@ draw_opening_in_progress (const UtScene *scene, cairo_t *cr)
         }
       before_m += piece_m;
     }
+}
+
+/* A line from cross to cross, with what it measures beside its end. */
+static void
+draw_measure (const UtScene *scene, cairo_t *cr)
+{
+  const UtMeasure *measure = scene->measure;
+  g_autofree char *text = measure != NULL && measure->storey == scene->storey ? ut_measure_text (measure, scene->desk) : NULL;
+  double x0, y0, x1, y1, width_px;
+
+  if (text == NULL)
+    return;
+  ut_view_to_sheet (scene->view, measure->from.x_m, measure->from.y_m, &x0, &y0);
+  ut_view_to_sheet (scene->view, measure->to.x_m, measure->to.y_m, &x1, &y1);
+  set_colour (cr, &scene->palette->ink, 1);
+  cairo_set_line_width (cr, 1.5);
+  cairo_move_to (cr, x0, y0);
+  cairo_line_to (cr, x1, y1);
+  for (int end = 0; end < 2; end++)
+    {
+      double x = end == 0 ? x0 : x1, y = end == 0 ? y0 : y1;
+
+      cairo_move_to (cr, x - 6, y);
+      cairo_line_to (cr, x + 6, y);
+      cairo_move_to (cr, x, y - 6);
+      cairo_line_to (cr, x, y + 6);
+    }
+  cairo_stroke (cr);
+  width_px = ut_text_width (text, 12);
+  ut_text_draw (cr, text, CLAMP (x1 + 12, 4, MAX (scene->view->width_px - width_px - 8, 4)), y1 + 8, 12, &scene->palette->ink, &scene->palette->sheet);
+}
+
+/* What to do next, along the upper edge. */
+static void
+draw_hint (const UtScene *scene, cairo_t *cr, const char *text)
+{
+  UtTextStyle style = { .size = 13, .width = MAX (scene->view->width_px - 120, 100), .wrap = TRUE, .plate = TRUE };
+
+  ut_text_place (cr, text, &style, CORNER_PX, CORNER_PX, &scene->palette->ink, &scene->palette->sheet);
+}
+
+static void
+draw_backdrop_work (const UtScene *scene, cairo_t *cr)
+{
+  const UtBackdropWork *work = scene->backdrop;
+  double x0, y0, x1, y1;
+
+  if (work == NULL)
+    return;
+  if (work->n_points > 0)
+    {
+      UtPoint to = work->n_points == 2 ? work->points[1] : work->next;
+
+      ut_view_to_sheet (scene->view, work->points[0].x_m, work->points[0].y_m, &x0, &y0);
+      ut_view_to_sheet (scene->view, to.x_m, to.y_m, &x1, &y1);
+      set_colour (cr, &scene->palette->sheet, 0.8);
+      cairo_set_line_width (cr, 4);
+      cairo_move_to (cr, x0, y0);
+      cairo_line_to (cr, x1, y1);
+      cairo_stroke_preserve (cr);
+      set_colour (cr, &scene->palette->ink, 1);
+      cairo_set_line_width (cr, 1.5);
+      cairo_stroke (cr);
+      draw_corner (scene, cr, work->points[0].x_m, work->points[0].y_m, 3.5);
+      draw_corner (scene, cr, to.x_m, to.y_m, 3.5);
+    }
+  g_autofree char *text = ut_backdrop_work_text (work, scene->desk);
+  draw_hint (scene, cr, text);
 }
 
 static void
@@ -606,6 +703,8 @@ draw_living (const UtScene *scene, cairo_t *cr)
   draw_band (scene, cr);
   draw_wall_in_progress (scene, cr);
   draw_opening_in_progress (scene, cr);
+  draw_measure (scene, cr);
+  draw_backdrop_work (scene, cr);
   draw_key (scene, cr);
   draw_scale_bar (scene, cr);
   draw_north (scene, cr);

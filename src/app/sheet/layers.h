@@ -4,7 +4,9 @@
 
 #include <gtk/gtk.h>
 
+#include "backdrop-tool.h"
 #include "desk.h"
+#include "measure-tool.h"
 #include "palette.h"
 #include "tool.h"
 #include "view.h"
@@ -19,7 +21,10 @@ typedef struct
   const UtSelectDrag *drag; /* for the band and the knob */
   const UtWallDraw *wall;       /* being drawn; NULL: not this tool */
   const UtOpeningDraw *opening;
+  const UtMeasure *measure;
+  const UtBackdropWork *backdrop;
   gboolean focused;
+  gboolean ghost; /* the storey below is shown faintly */
   int device_scale;
 } UtScene;
 

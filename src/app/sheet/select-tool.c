@@ -147,6 +147,17 @@ ut_select_click (UtDesk *desk, const UtPointer *pointer, guint repeat)
     ut_selection_set_one (selection, kind, id);
 }
 
+void
+ut_select_for_menu (UtDesk *desk, const UtPointer *pointer)
+{
+  UtHit hit = hit_at (desk, pointer, 0);
+  UtRadioKind kind;
+  g_autofree char *id = NULL;
+
+  if (picked (desk, &hit, pointer->storey, &kind, &id) && !ut_selection_has (ut_desk_selection (desk), kind, id))
+    ut_selection_set_one (ut_desk_selection (desk), kind, id);
+}
+
 /* The one selected cell whose power knob is under the pointer, or NULL. */
 static const UtRadio *
 knob_at (UtDesk *desk, const UtPointer *pointer)

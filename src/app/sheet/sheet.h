@@ -4,6 +4,7 @@
 #include <gtk/gtk.h>
 
 #include "desk.h"
+#include "measure-tool.h"
 #include "palette.h"
 #include "tool.h"
 #include "view.h"
@@ -19,13 +20,23 @@ UtToolKind ut_sheet_tool (UtSheet *sheet);
 
 /* Signals "tool-changed", "view-changed". */
 
-void ut_sheet_set_storey (UtSheet *sheet, guint storey);
-guint ut_sheet_storey (UtSheet *sheet);
+/* The menu of the second button and the menu key; and the plan's point that it was asked for at. */
+void ut_sheet_set_menu (UtSheet *sheet, GMenuModel *menu);
+void ut_sheet_menu_point (UtSheet *sheet, double *x_m, double *y_m);
+
+/* What was measured last, or NULL; borrowed. */
+const UtMeasure *ut_sheet_measure (UtSheet *sheet);
+
+/* Whether the walls of the storey below are shown. */
+void ut_sheet_set_ghost (UtSheet *sheet, gboolean ghost);
 
 void ut_sheet_set_palette (UtSheet *sheet, const UtPalette *palette);
 
 void ut_sheet_fit (UtSheet *sheet);
 void ut_sheet_zoom (UtSheet *sheet, double factor); /* about the middle */
+
+/* The plan's point under the pointer, or in the middle of the sheet when the pointer is elsewhere. */
+void ut_sheet_pointer (UtSheet *sheet, double *x_m, double *y_m);
 
 /* For tests and for placing by keyboard: conversions between the plan and the widget. */
 const UtView *ut_sheet_view (UtSheet *sheet);

@@ -13,7 +13,7 @@ typedef struct
   gboolean no_snap;  /* Alt */
 } UtPointer;
 
-typedef enum { UT_TOOL_SELECT, UT_TOOL_WALL, UT_TOOL_OPENING, UT_TOOL_CELL, UT_TOOL_TERMINAL, UT_N_TOOLS } UtToolKind;
+typedef enum { UT_TOOL_SELECT, UT_TOOL_WALL, UT_TOOL_OPENING, UT_TOOL_CELL, UT_TOOL_TERMINAL, UT_TOOL_MEASURE, UT_TOOL_BACKDROP, UT_N_TOOLS } UtToolKind;
 
 /* What a drag with the select tool is about. */
 typedef enum { UT_DRAG_NONE, UT_DRAG_MOVE, UT_DRAG_BAND, UT_DRAG_POWER, UT_DRAG_VERTEX } UtDragKind;
@@ -42,6 +42,9 @@ double ut_snap_step_m (double px_per_m);
 
 /* A click selects what is under it; `repeat`: how often the same place was clicked before. */
 void ut_select_click (UtDesk *desk, const UtPointer *pointer, guint repeat);
+
+/* A menu was asked for there: what is under the pointer is selected, unless it is among what is selected already. */
+void ut_select_for_menu (UtDesk *desk, const UtPointer *pointer);
 
 /* The vertex of the one selected wall that is under the pointer; FALSE: none is. */
 gboolean ut_vertex_at (UtDesk *desk, const UtPointer *pointer, guint *wall, guint *vertex);
