@@ -10,7 +10,7 @@ LAYERS = {
     "power": ((), ("lapacke.h", "cblas.h", "openblas")),
     "plan": ((), ("glib", "gio", "json-glib")),
     "study": (("radio", "power", "plan"), ("glib", "gio", "json-glib")),
-    "draw": (("plan", "study"), ("glib", "gio", "cairo", "pango", "gdk-pixbuf")),
+    "draw": (("plan", "study"), ("glib", "gio", "cairo", "pango", "gdk-pixbuf", "poppler")),
     "cli": (("radio", "power", "plan", "study", "draw"), ("glib", "gio")),
     "app": (("plan", "study", "draw"), ("glib", "gio", "gtk", "cairo")),
 }
