@@ -10,17 +10,30 @@
 struct _UtApplication
 {
   GtkApplication parent;
+  gboolean recovered; /* what was left unsaved has been looked for */
 };
 
 G_DEFINE_FINAL_TYPE (UtApplication, ut_application, GTK_TYPE_APPLICATION)
 
-static void
+static UtWindow *
 show_empty (UtApplication *self)
 {
   g_autoptr (UtPlan) plan = (UtPlan *) ut_plan_new_empty ();
   g_autoptr (UtDocument) document = ut_document_new (plan);
+  UtWindow *window = ut_window_new (self, document);
 
-  gtk_window_present (GTK_WINDOW (ut_window_new (self, document)));
+  gtk_window_present (GTK_WINDOW (window));
+  return window;
+}
+
+/* Once, before anything else is shown. */
+static gboolean
+recover (UtApplication *self)
+{
+  if (self->recovered)
+    return FALSE;
+  self->recovered = TRUE;
+  return ut_window_recover (self);
 }
 
 static void
@@ -30,14 +43,15 @@ ut_application_activate (GApplication *application)
 
   if (window != NULL)
     gtk_window_present (window);
-  else
-    show_empty (UT_APPLICATION (application));
+  else if (!recover (UT_APPLICATION (application)))
+    ut_window_show_start (show_empty (UT_APPLICATION (application)));
 }
 
 static void
 ut_application_open (GApplication *application, GFile **files, int n_files, const char *hint)
 {
   (void) hint;
+  recover (UT_APPLICATION (application));
   for (int i = 0; i < n_files; i++)
     ut_window_open_file (UT_APPLICATION (application), NULL, files[i]);
   /* Not one of them could be read: the message has its window all the same. */

@@ -226,6 +226,38 @@ open_uri_cb (GSimpleAction *action, GVariant *parameter, gpointer self)
   open_chosen (file, self);
 }
 
+static void
+start_new_cb (GSimpleAction *action, GVariant *parameter, gpointer data)
+{
+  UtWindow *self = data;
+
+  (void) action;
+  (void) parameter;
+  gtk_stack_set_visible_child_name (self->pages, "work");
+  gtk_widget_grab_focus (GTK_WIDGET (self->sheet));
+}
+
+/* An example by its name becomes a plan that was never saved. */
+static void
+open_example_cb (GSimpleAction *action, GVariant *name, gpointer data)
+{
+  UtWindow *self = data;
+  g_autofree char *path = g_strconcat (UT_EXAMPLES_PATH, g_variant_get_string (name, NULL), NULL);
+  g_autoptr (GBytes) text = g_resources_lookup_data (path, G_RESOURCE_LOOKUP_FLAGS_NONE, NULL);
+  g_autoptr (GPtrArray) faults = ut_faults_new ();
+  g_autoptr (UtPlan) plan = text != NULL ? (UtPlan *) ut_plan_read (g_bytes_get_data (text, NULL), g_bytes_get_size (text), faults) : NULL;
+  g_autoptr (UtDocument) document = plan != NULL ? ut_document_new (plan) : NULL;
+
+  (void) action;
+  if (document == NULL)
+    return;
+  if (is_untouched (self))
+    ut_window_set_document (self, document);
+  else
+    gtk_window_present (GTK_WINDOW (ut_window_new (UT_APPLICATION (gtk_window_get_application (data)), document)));
+  gtk_widget_grab_focus (GTK_WIDGET (self->sheet));
+}
+
 void
 ut_window_fill_recent (UtWindow *self)
 {
@@ -245,16 +277,137 @@ ut_window_fill_recent (UtWindow *self)
   g_list_free_full (items, (GDestroyNotify) gtk_recent_info_unref);
 }
 
-void
-ut_window_add_file_actions (UtWindow *self)
-{
-  static const GActionEntry actions[] = {
-    { .name = "open", .activate = open_cb },       { .name = "open-uri", .activate = open_uri_cb, .parameter_type = "s" },
-    { .name = "save", .activate = save_cb },       { .name = "save-as", .activate = save_as_cb },
-    { .name = "save-to", .activate = save_to_cb, .parameter_type = "s" }, { .name = "save-page", .activate = save_page_cb },
-  };
+/* ---- the file and copies of unsaved work ---- */
 
-  g_action_map_add_action_entries (G_ACTION_MAP (self), actions, G_N_ELEMENTS (actions), self);
+void
+ut_window_show_notice (UtWindow *self, const char *text, gboolean reload)
+{
+  gtk_label_set_text (self->notice_label, text);
+  gtk_widget_set_tooltip_text (GTK_WIDGET (self->notice_label), text);
+  gtk_widget_set_visible (self->notice_reload, reload);
+  gtk_widget_set_visible (self->notice, TRUE);
+}
+
+static void
+close_notice_cb (GSimpleAction *action, GVariant *parameter, gpointer self)
+{
+  (void) action;
+  (void) parameter;
+  gtk_widget_set_visible (UT_WINDOW (self)->notice, FALSE);
+}
+
+static void
+reload_cb (GSimpleAction *action, GVariant *parameter, gpointer data)
+{
+  UtWindow *self = data;
+  UtDocument *document = ut_desk_document (self->desk);
+  g_autoptr (GPtrArray) faults = ut_faults_new ();
+  g_autoptr (GError) error = NULL;
+
+  (void) action;
+  (void) parameter;
+  ut_desk_drop_draft (self->desk);
+  if (ut_document_file (document) == NULL)
+    return;
+  if (ut_document_reload (document, _ ("Reload"), faults, &error))
+    gtk_widget_set_visible (self->notice, FALSE);
+  else
+    tell_faults (GTK_WINDOW (self), ut_document_file (document), faults, error);
+}
+
+/* What the state of the file asks for; nothing is said twice. */
+static void
+look_at_file (UtWindow *self)
+{
+  switch (ut_document_file_state (ut_desk_document (self->desk)))
+    {
+    case UT_FILE_CHANGED:
+      ut_window_show_notice (self, _ ("Another program has changed the file. Reload shows its version; Undo brings yours back."), TRUE);
+      break;
+    case UT_FILE_MISSING:
+      ut_window_show_notice (self, _ ("The file is no longer there. Save writes it again."), FALSE);
+      break;
+    case UT_FILE_READ_ONLY:
+      ut_window_show_notice (self, _ ("This file cannot be written to. Save As keeps what you change."), FALSE);
+      break;
+    case UT_FILE_SAME:
+      if (gtk_widget_get_visible (self->notice_reload))
+        gtk_widget_set_visible (self->notice, FALSE);
+      break;
+    case UT_FILE_NONE:
+      break;
+    }
+}
+
+static void
+file_changed_cb (GFileMonitor *monitor, GFile *file, GFile *other, GFileMonitorEvent event, UtWindow *self)
+{
+  (void) monitor;
+  (void) file;
+  (void) other;
+  if (event == G_FILE_MONITOR_EVENT_CHANGES_DONE_HINT || event == G_FILE_MONITOR_EVENT_DELETED || event == G_FILE_MONITOR_EVENT_RENAMED
+      || event == G_FILE_MONITOR_EVENT_MOVED_IN || event == G_FILE_MONITOR_EVENT_MOVED_OUT)
+    look_at_file (self);
+}
+
+static void
+watch_file (UtWindow *self)
+{
+  GFile *file = ut_document_file (ut_desk_document (self->desk));
+
+  g_clear_object (&self->monitor);
+  gtk_widget_set_visible (self->notice, FALSE);
+  if (file == NULL)
+    return;
+  self->monitor = g_file_monitor_file (file, G_FILE_MONITOR_WATCH_MOVES, NULL, NULL);
+  if (self->monitor != NULL)
+    g_signal_connect_object (self->monitor, "changed", G_CALLBACK (file_changed_cb), self, 0);
+  look_at_file (self);
+}
+
+void
+ut_window_stop_watching (UtWindow *self)
+{
+  g_clear_object (&self->monitor);
+  if (self->recovery != NULL)
+    ut_recovery_close (self->recovery);
+  g_clear_object (&self->recovery);
+}
+
+void
+ut_window_watch_document (UtWindow *self)
+{
+  g_autofree char *folder = ut_recovery_folder ();
+  UtDocument *document = ut_desk_document (self->desk);
+
+  ut_window_stop_watching (self);
+  self->recovery = ut_recovery_new (document, folder, UT_RECOVERY_MS);
+  ut_recovery_write_now (self->recovery);
+  g_signal_connect_object (document, "notify::file", G_CALLBACK (watch_file), self, G_CONNECT_SWAPPED);
+  watch_file (self);
+}
+
+gboolean
+ut_window_recover (UtApplication *application)
+{
+  g_autofree char *folder = ut_recovery_folder ();
+  g_autoptr (GPtrArray) left = ut_recovery_find (folder);
+  gboolean any = FALSE;
+
+  for (guint i = 0; i < left->len; i++)
+    {
+      g_autoptr (UtDocument) document = ut_recovery_open (left->pdata[i]);
+      UtWindow *window;
+
+      if (document == NULL)
+        continue; /* it stays for a program that can read it */
+      window = ut_window_new (application, document);
+      ut_recovery_forget (left->pdata[i]);
+      ut_window_show_notice (window, _ ("Unsaved work was recovered. Undo shows the plan as it was saved."), FALSE);
+      gtk_window_present (GTK_WINDOW (window));
+      any = TRUE;
+    }
+  return any;
 }
 
 /* ---- closing ---- */
@@ -294,4 +447,18 @@ ut_window_asks_before_closing (UtWindow *self)
     return FALSE;
   ut_compat_ask_save (GTK_WINDOW (self), name, close_answered, self);
   return TRUE;
+}
+
+void
+ut_window_add_file_actions (UtWindow *self)
+{
+  static const GActionEntry actions[] = {
+    { .name = "open", .activate = open_cb },       { .name = "open-uri", .activate = open_uri_cb, .parameter_type = "s" },
+    { .name = "save", .activate = save_cb },       { .name = "save-as", .activate = save_as_cb },
+    { .name = "save-to", .activate = save_to_cb, .parameter_type = "s" }, { .name = "save-page", .activate = save_page_cb },
+    { .name = "start-new", .activate = start_new_cb }, { .name = "open-example", .activate = open_example_cb, .parameter_type = "s" },
+    { .name = "reload", .activate = reload_cb },   { .name = "close-notice", .activate = close_notice_cb },
+  };
+
+  g_action_map_add_action_entries (G_ACTION_MAP (self), actions, G_N_ELEMENTS (actions), self);
 }

@@ -3,6 +3,8 @@
 
 #include "details.h"
 #include "links-panel.h"
+#include "recovery.h"
+#include "start-page.h"
 #include "window.h"
 
 struct _UtWindow
@@ -20,6 +22,13 @@ struct _UtWindow
   GtkScale *hold_scale;
   GMenu *recent_menu;
   GMenuModel *sheet_menu;
+  UtRecovery *recovery;
+  GFileMonitor *monitor; /* of the document's file; NULL: it has none */
+  GtkStack *pages;
+  UtStartPage *start_page;
+  GtkWidget *notice;
+  GtkLabel *notice_label;
+  GtkWidget *notice_reload;
   gboolean showing; /* widgets are being brought to the desk's state */
 };
 
@@ -36,6 +45,13 @@ void ut_window_show_edits (UtWindow *window);
 /* Actions of window-backdrop.c.  A file that is a picture or a PDF by its type becomes the storey's backdrop; FALSE: it is something else. */
 void ut_window_add_backdrop_actions (UtWindow *window);
 gboolean ut_window_take_picture (UtWindow *window, GFile *file);
+
+/* A line under the header that stays until it is closed; reload: with a button for that. */
+void ut_window_show_notice (UtWindow *window, const char *text, gboolean reload);
+
+/* The document became another one, or lies in another file: copies of unsaved work, and an eye on the file. */
+void ut_window_watch_document (UtWindow *window);
+void ut_window_stop_watching (UtWindow *window);
 
 /* Asks when there is something unsaved; TRUE: the window stays for now. */
 gboolean ut_window_asks_before_closing (UtWindow *window);

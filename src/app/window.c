@@ -444,6 +444,7 @@ ut_window_dispose (GObject *object)
 {
   UtWindow *self = UT_WINDOW (object);
 
+  ut_window_stop_watching (self);
   gtk_widget_dispose_template (GTK_WIDGET (self), UT_TYPE_WINDOW);
   g_clear_object (&self->desk);
   G_OBJECT_CLASS (ut_window_parent_class)->dispose (object);
@@ -459,6 +460,7 @@ ut_window_class_init (UtWindowClass *class)
   g_type_ensure (UT_TYPE_SHEET);
   g_type_ensure (UT_TYPE_LINKS_PANEL);
   g_type_ensure (UT_TYPE_DETAILS);
+  g_type_ensure (UT_TYPE_START_PAGE);
   gtk_widget_class_set_template_from_resource (widget_class, "/io/undertone/Undertone/window.ui");
   gtk_widget_class_bind_template_child (widget_class, UtWindow, sheet);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, links);
@@ -477,6 +479,11 @@ ut_window_class_init (UtWindowClass *class)
   gtk_widget_class_bind_template_child (widget_class, UtWindow, hold_scale);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, recent_menu);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, sheet_menu);
+  gtk_widget_class_bind_template_child (widget_class, UtWindow, notice);
+  gtk_widget_class_bind_template_child (widget_class, UtWindow, pages);
+  gtk_widget_class_bind_template_child (widget_class, UtWindow, start_page);
+  gtk_widget_class_bind_template_child (widget_class, UtWindow, notice_label);
+  gtk_widget_class_bind_template_child (widget_class, UtWindow, notice_reload);
 }
 
 static void
@@ -526,7 +533,9 @@ ut_window_set_document (UtWindow *self, UtDocument *document)
   g_signal_connect_object (ut_desk_selection (desk), "changed", G_CALLBACK (selection_changed_cb), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (ut_desk_solving (desk), "answered", G_CALLBACK (answered_cb), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (document, "notify::modified", G_CALLBACK (show_title), self, G_CONNECT_SWAPPED);
+  ut_window_watch_document (self);
   g_signal_connect_object (document, "notify::file", G_CALLBACK (show_title), self, G_CONNECT_SWAPPED);
+  gtk_stack_set_visible_child_name (self->pages, "work");
   ut_sheet_set_desk (self->sheet, desk);
   ut_links_panel_set_up (self->links, ut_desk_solving (desk), ut_desk_selection (desk));
   ut_details_set_desk (self->details, desk);
@@ -544,6 +553,13 @@ ut_window_new (UtApplication *application, UtDocument *document)
   ut_window_set_document (self, document);
   gtk_widget_grab_focus (GTK_WIDGET (self->sheet));
   return self;
+}
+
+void
+ut_window_show_start (UtWindow *self)
+{
+  gtk_stack_set_visible_child_name (self->pages, "start");
+  gtk_widget_child_focus (GTK_WIDGET (self->start_page), GTK_DIR_TAB_FORWARD);
 }
 
 UtDesk *

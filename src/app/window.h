@@ -17,5 +17,11 @@ UtWindow *ut_window_new (UtApplication *application, UtDocument *document);
  * in a message and changes nothing.  window may be NULL. */
 void ut_window_open_file (UtApplication *application, UtWindow *window, GFile *file);
 
+/* The page to begin with, until something is opened or begun. */
+void ut_window_show_start (UtWindow *window);
+
+/* Windows for what a program that was killed left unsaved; TRUE: there was some. */
+gboolean ut_window_recover (UtApplication *application);
+
 UtDesk *ut_window_desk (UtWindow *window);
 UtSheet *ut_window_sheet (UtWindow *window);

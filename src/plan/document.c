@@ -256,3 +256,46 @@ ut_document_save (UtDocument *document, GFile *file, gboolean force, GError **er
   state_tell (document, &before);
   return TRUE;
 }
+
+UtFileState
+ut_document_file_state (UtDocument *document)
+{
+  if (document->file == NULL)
+    return UT_FILE_NONE;
+  g_autoptr (GFileInfo) info = g_file_query_info (document->file,
+                                                  G_FILE_ATTRIBUTE_ETAG_VALUE
+                                                  "," G_FILE_ATTRIBUTE_ACCESS_CAN_WRITE,
+                                                  G_FILE_QUERY_INFO_NONE,
+                                                  NULL,
+                                                  NULL);
+  if (info == NULL)
+    return UT_FILE_MISSING;
+  if (document->etag != NULL && g_strcmp0 (g_file_info_get_etag (info), document->etag) != 0)
+    return UT_FILE_CHANGED;
+  return g_file_info_get_attribute_boolean (info, G_FILE_ATTRIBUTE_ACCESS_CAN_WRITE)
+             ? UT_FILE_SAME
+             : UT_FILE_READ_ONLY;
+}
+
+gboolean
+ut_document_reload (UtDocument *document,
+                    const char *label,
+                    GPtrArray *faults,
+                    GError **error)
+{
+  g_autofree char *text = NULL, *etag = NULL;
+  gsize length;
+  if (!g_file_load_contents (document->file, NULL, &text, &length, &etag, error))
+    return FALSE;
+  const UtPlan *plan = ut_plan_read (text, length, faults);
+  if (plan == NULL)
+    return FALSE;
+  State before = state_take (document);
+  ut_history_push (document->history, plan, label, NULL, "", g_get_monotonic_time ());
+  ut_history_mark_saved (document->history);
+  ut_plan_unref (plan);
+  g_free (document->etag);
+  document->etag = g_steal_pointer (&etag);
+  state_tell (document, &before);
+  return TRUE;
+}

@@ -36,3 +36,21 @@ const char *ut_document_selection (UtDocument *document);
  * Notices a file that was changed by somebody else (G_IO_ERROR_WRONG_ETAG) unless force. On failure
  * document and old file stay as they were. */
 gboolean ut_document_save (UtDocument *document, GFile *file, gboolean force, GError **error);
+
+/* What became of the document's file since it was read or written. */
+typedef enum
+{
+  UT_FILE_NONE, /* never saved */
+  UT_FILE_SAME,
+  UT_FILE_CHANGED, /* by somebody else */
+  UT_FILE_MISSING,
+  UT_FILE_READ_ONLY /* the same, but it cannot be written to */
+} UtFileState;
+UtFileState ut_document_file_state (UtDocument *document);
+
+/* Reads the file again, as one step of that name, so that Undo shows what was there before. FALSE: faults or
+ * *error as in ut_plan_read_file (), and nothing is changed. */
+gboolean ut_document_reload (UtDocument *document,
+                             const char *label,
+                             GPtrArray *faults,
+                             GError **error);

@@ -27,13 +27,17 @@ tap = Tap()
 class App:
     """The running program."""
 
-    def __init__(self, plan):
+    def __init__(self, plan=None, sheet=True):
         self.log_file = tempfile.TemporaryFile()
-        self.process = subprocess.Popen([program, str(plan)], stdout=self.log_file, stderr=subprocess.STDOUT)
+        self.process = subprocess.Popen([program, *([str(plan)] if plan else [])], stdout=self.log_file, stderr=subprocess.STDOUT)
         self.bus = Gio.bus_get_sync(Gio.BusType.SESSION)
         self.frame = self.wait("the window", self.find_frame)
-        self.sheet = self.wait("the sheet", lambda: self.find("image", "Sheet"))
+        if sheet:
+            self.find_sheet()
         self.window = self.wait("the X window", lambda: self.search("search", "--onlyvisible", "--pid", self.process.pid))[-1]
+
+    def find_sheet(self):
+        self.sheet = self.wait("the sheet", lambda: self.find("image", "Sheet"))
 
     def log(self):
         self.log_file.seek(0)
@@ -328,6 +332,44 @@ with tempfile.TemporaryDirectory() as folder:
     code = app.quit()
     noise = [line for line in app.log().splitlines() if re.search("CRITICAL|WARNING|ERROR|runtime error|Sanitizer", line)]
     tap.check("ends with 0 and without a complaint", same("exit", code, 0) + noise)
+
+    # Killed in the middle of work: what was unsaved is there again, and Undo leads back to the file.
+    os.environ["XDG_STATE_HOME"] = str(pathlib.Path(folder) / "state")
+    app = App(plan)
+    app.wait("the answer", lambda: "14 targets" in app.description())
+    app.act("select", GLib.Variant("s", "cell C3"))
+    app.act("duplicate")
+    app.wait("the step", lambda: "5 cells" in app.description())
+    app.wait("a copy on disk", lambda: list((pathlib.Path(folder) / "state").rglob("*.undertone")), 10)
+    app.process.kill()
+    app.process.wait()
+    time.sleep(0.5)
+    app = App()
+    app.wait("the unsaved work", lambda: "5 cells" in app.description())
+    app.act("undo")
+    app.wait("the file", lambda: "4 cells" in app.description())
+    code = app.quit()
+    tap.check("a killed program's work is recovered", same("exit", code, 0) + same("file", plan.read_bytes() == start, True)
+              + same("left", [str(p) for p in (pathlib.Path(folder) / "state").rglob("*.undertone")], [])
+              + [line for line in app.log().splitlines() if re.search("CRITICAL|WARNING|Sanitizer", line)])
+
+    # Without a file: a page to begin with; an example opens from it. A file changed by another is told of.
+    app = App(sheet=False)
+    app.wait("the start page", lambda: app.find("push button", "Two rooms") or app.find("button", "Two rooms"))
+    app.act("open-example", GLib.Variant("s", "two-rooms.undertone"))
+    app.find_sheet()
+    app.wait("the example", lambda: "2 cells" in app.description())
+    mine = pathlib.Path(folder) / "mine.undertone"
+    app.act("save-to", GLib.Variant("s", str(mine)))
+    app.wait("the file", mine.exists)
+    time.sleep(0.3)
+    mine.write_bytes(mine.read_bytes().replace(b"Two rooms", b"Two halls"))
+    app.wait("the notice", lambda: next((n for n in app.walk() if "Another program has changed the file" in n.get_name()), None))
+    app.act("reload")
+    app.wait("the other's title", lambda: next((n for n in app.walk() if "Two halls" in n.get_name()), None))
+    code = app.quit()
+    tap.check("the start page opens an example; a file changed outside is noticed and read again", same("exit", code, 0)
+              + [line for line in app.log().splitlines() if re.search("CRITICAL|WARNING|Sanitizer", line)])
 
     # What is broken is told of and changes nothing.
     broken = pathlib.Path(folder) / "broken.undertone"

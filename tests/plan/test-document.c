@@ -219,6 +219,42 @@ test_open_faults (Fixture *fixture, gconstpointer data)
   g_assert_cmpuint (faults->len, ==, 1);
 }
 
+/* The file's fate is told, and reading it again is a step. */
+static void
+test_file_state (Fixture *fixture, gconstpointer data)
+{
+  (void)data;
+  UtDocument *document = fixture->document;
+  g_autoptr (GPtrArray) faults = ut_faults_new ();
+  g_autoptr (GError) error = NULL;
+  g_autofree char *path = g_file_get_path (fixture->file);
+  g_assert_cmpint (ut_document_file_state (document), ==, UT_FILE_NONE);
+  save (fixture, fixture->file, FALSE);
+  g_assert_cmpint (ut_document_file_state (document), ==, UT_FILE_SAME);
+
+  g_autoptr (UtDocument) other = ut_document_open (fixture->file, faults, &error);
+  ut_document_apply (
+      other, ut_plan_with_title (ut_document_plan (other), "theirs"), "theirs", NULL, "");
+  g_usleep (20000); /* etags are made of times */
+  g_assert_true (ut_document_save (other, NULL, FALSE, &error));
+  g_assert_cmpint (ut_document_file_state (document), ==, UT_FILE_CHANGED);
+  apply_title (fixture, "mine");
+  g_assert_true (ut_document_reload (document, "Reload", faults, &error));
+  g_assert_cmpstr (ut_document_plan (document)->title, ==, "theirs");
+  g_assert_false (ut_document_is_modified (document));
+  g_assert_cmpint (ut_document_file_state (document), ==, UT_FILE_SAME);
+  g_assert_true (ut_document_undo (document));
+  g_assert_cmpstr (ut_document_plan (document)->title, ==, "mine");
+  g_assert_true (ut_document_is_modified (document));
+
+  g_assert_true (g_file_set_contents (path, "{", -1, &error));
+  g_assert_false (ut_document_reload (document, "Reload", faults, &error));
+  g_assert_cmpuint (faults->len, >, 0);
+  g_assert_cmpstr (ut_document_plan (document)->title, ==, "mine");
+  g_remove (path);
+  g_assert_cmpint (ut_document_file_state (document), ==, UT_FILE_MISSING);
+}
+
 int
 main (int argc, char **argv)
 {
@@ -226,6 +262,7 @@ main (int argc, char **argv)
   g_test_add ("/document/steps", Fixture, NULL, set_up, test_steps, tear_down);
   g_test_add ("/document/save", Fixture, NULL, set_up, test_save, tear_down);
   g_test_add ("/document/changed-outside", Fixture, NULL, set_up, test_changed_outside, tear_down);
+  g_test_add ("/document/file-state", Fixture, NULL, set_up, test_file_state, tear_down);
   g_test_add ("/document/failure", Fixture, NULL, set_up, test_failure, tear_down);
   g_test_add ("/document/open-faults", Fixture, NULL, set_up, test_open_faults, tear_down);
   return g_test_run ();
