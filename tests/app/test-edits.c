@@ -411,6 +411,59 @@ test_measure (void)
   g_assert_cmpfloat (measured.crossings_db, >, 0);
 }
 
+/* A drag by its handle turns a directional antenna to 5 degrees; a link's end goes to the cell it is dropped on; each is one step. */
+static void
+test_handles (void)
+{
+  g_autoptr (UtDesk) desk = open_desk ("cold-store.undertone");
+  UtSelectDrag drag = { 0 };
+  g_autofree char *refusal = NULL;
+  const UtPlan *plan;
+  const UtRadio *cell, *terminal;
+  UtPointer pointer;
+  double azimuth;
+
+  /* A sector antenna of the plan for C1. */
+  UtAntenna *sector = ut_antenna_new ();
+  g_free (sector->id);
+  sector->id = g_strdup ("sector-90");
+  sector->pattern = UT_ANTENNA_SECTOR;
+  sector->beamwidth_h_deg = 90;
+  sector->beamwidth_v_deg = 30;
+  ut_desk_apply (desk, ut_plan_with_antenna (ut_desk_plan (desk), -1, sector), "Antenna", NULL);
+  g_autofree char *choice = g_strdup_printf ("%u", ut_desk_plan (desk)->antennas->len);
+  ut_desk_apply (desk, ut_fields_with (ut_desk_plan (desk), UT_SUBJECT_CELL, "C1", 4, choice, &refusal), "Choose", NULL);
+  g_assert_null (refusal);
+  select_text (desk, "cell C1");
+  cell = radio (ut_desk_plan (desk), UT_KIND_CELL, "C1");
+  azimuth = cell->azimuth_deg * G_PI / 180;
+  pointer = at (cell->x_m + UT_TURN_HANDLE_PX / 40 * sin (azimuth), cell->y_m + UT_TURN_HANDLE_PX / 40 * cos (azimuth));
+  ut_select_begin (&drag, desk, &pointer);
+  g_assert_cmpint (drag.kind, ==, UT_DRAG_TURN);
+  pointer = at (cell->x_m + 3, cell->y_m - 3.1); /* 135.9 degrees clockwise from +y */
+  ut_select_update (&drag, desk, &pointer);
+  ut_select_end (&drag, desk);
+  g_assert_cmpfloat_with_epsilon (radio (ut_desk_plan (desk), UT_KIND_CELL, "C1")->azimuth_deg, 135, 1e-9);
+  g_assert_cmpstr (ut_document_undo_label (ut_desk_document (desk)), ==, "Turn C1");
+
+  plan = ut_desk_plan (desk);
+  UtStudy *study = ut_desk_answer (desk);
+  const UtLinkAnswer *link = ut_study_link (study, 0);
+  terminal = &ut_plan_terminal (plan, link->terminal)->radio;
+  cell = &ut_plan_cell (plan, (guint) link->cell)->radio;
+  guint other = link->cell == 0 ? 1 : 0;
+  ut_selection_clear (ut_desk_selection (desk));
+  /* Three quarters of the way from the terminal to its cell. */
+  pointer = at (terminal->x_m + 0.75 * (cell->x_m - terminal->x_m), terminal->y_m + 0.75 * (cell->y_m - terminal->y_m));
+  ut_select_begin (&drag, desk, &pointer);
+  g_assert_cmpint (drag.kind, ==, UT_DRAG_SERVE);
+  g_autofree char *terminal_id = g_strdup (terminal->id);
+  pointer = at (ut_plan_cell (plan, other)->radio.x_m, ut_plan_cell (plan, other)->radio.y_m);
+  ut_select_update (&drag, desk, &pointer);
+  ut_select_end (&drag, desk);
+  g_assert_cmpstr (ut_plan_terminal (ut_desk_plan (desk), (guint) ut_plan_find_terminal (ut_desk_plan (desk), terminal_id))->cell, ==, ut_plan_cell (plan, other)->radio.id);
+}
+
 static guint
 field_index (UtSubject subject, const char *label)
 {
@@ -487,6 +540,7 @@ main (int argc, char **argv)
   g_test_add_func ("/edits/backdrop-scale", test_backdrop_scale);
   g_test_add_func ("/edits/backdrop-tool", test_backdrop_tool);
   g_test_add_func ("/edits/measure", test_measure);
+  g_test_add_func ("/edits/handles", test_handles);
   g_test_add_func ("/edits/many-fields", test_many_fields);
   return g_test_run ();
 }

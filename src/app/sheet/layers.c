@@ -6,13 +6,12 @@
 #include <glib/gi18n.h>
 
 #include "labels.h"
+#include "marks.h"
 #include "plan-painter.h"
 #include "report.h"
 #include "storey-edits.h"
 #include "text.h"
 
-#define MARK_PX 10.0
-#define CORNER_PX 12.0
 
 void
 ut_still_layer_clear (UtStillLayer *layer)
@@ -29,7 +28,7 @@ paint_options (const UtScene *scene)
     .units_per_m = scene->view->scale_px_m,
     .origin_x = scene->view->origin_x_px,
     .origin_y = scene->view->origin_y_px,
-    .mark = MARK_PX,
+    .mark = UT_MARK_PX,
     .palette = scene->palette,
   };
 }
@@ -112,346 +111,6 @@ make_still_layer (UtStillLayer *layer, const UtScene *scene, const UtPlan *plan)
   layer->device_scale = scene->device_scale;
 }
 
-static void
-set_colour (cairo_t *cr, const UtColour *colour, double alpha)
-{
-  cairo_set_source_rgba (cr, colour->red, colour->green, colour->blue, alpha);
-}
-
-static void
-place_of (const UtScene *scene, const UtRadio *radio, double *x_px, double *y_px)
-{
-  ut_view_to_sheet (scene->view, radio->x_m, radio->y_m, x_px, y_px);
-}
-
-static gboolean
-is_here (const UtScene *scene, const UtPlan *plan, const UtRadio *radio)
-{
-  return ut_plan_find_storey (plan, radio->storey) == (int) scene->storey;
-}
-
-/* ---- marks of what is selected ---- */
-
-static void
-draw_power_handle (const UtScene *scene, cairo_t *cr, const UtRadio *cell)
-{
-  double x_px, y_px, knob_px = ut_power_handle_px (cell, cell->power_dbm);
-  g_autofree char *figure = ut_report_figure (cell->power_dbm, 1);
-  g_autofree char *text = g_strdup_printf (_ ("set %s dBm"), figure);
-
-  place_of (scene, cell, &x_px, &y_px);
-  x_px += UT_POWER_HANDLE_X_PX;
-  set_colour (cr, &scene->palette->ink, 1);
-  cairo_set_line_width (cr, 2);
-  cairo_move_to (cr, x_px, y_px);
-  cairo_line_to (cr, x_px, y_px - UT_POWER_HANDLE_PX);
-  cairo_stroke (cr);
-  cairo_arc (cr, x_px, y_px - knob_px, 5, 0, 2 * G_PI);
-  set_colour (cr, &scene->palette->sheet, 1);
-  cairo_fill_preserve (cr);
-  set_colour (cr, &scene->palette->ink, 1);
-  cairo_stroke (cr);
-  ut_text_draw (cr, text, x_px + 9, y_px - knob_px - 7, 12, &scene->palette->ink, &scene->palette->sheet);
-}
-
-/* Labels leave the power handle alone. */
-static void
-take_power_handle (const UtScene *scene, GArray *boxes)
-{
-  UtSelection *selection = ut_desk_selection (scene->desk);
-  const UtRadio *cell;
-  double x_px, y_px;
-
-  if (ut_selection_size (selection) != 1 || ut_selection_pick (selection, 0)->kind != UT_KIND_CELL)
-    return;
-  cell = ut_plan_radio (ut_desk_plan (scene->desk), UT_KIND_CELL, ut_selection_pick (selection, 0)->id);
-  if (cell == NULL || !is_here (scene, ut_desk_plan (scene->desk), cell))
-    return;
-  place_of (scene, cell, &x_px, &y_px);
-  ut_boxes_take (boxes, x_px + UT_POWER_HANDLE_X_PX - 7, y_px - UT_POWER_HANDLE_PX - 8, 110, UT_POWER_HANDLE_PX + 8);
-}
-
-/* ---- walls: what is selected, what is being drawn ---- */
-
-static void
-trace (const UtScene *scene, cairo_t *cr, const GArray *points)
-{
-  for (guint i = 0; i < points->len; i++)
-    {
-      double x, y;
-
-      ut_view_to_sheet (scene->view, g_array_index (points, UtPoint, i).x_m, g_array_index (points, UtPoint, i).y_m, &x, &y);
-      if (i == 0)
-        cairo_move_to (cr, x, y);
-      else
-        cairo_line_to (cr, x, y);
-    }
-}
-
-static void
-draw_corner (const UtScene *scene, cairo_t *cr, double x_m, double y_m, double size_px)
-{
-  double x, y;
-
-  ut_view_to_sheet (scene->view, x_m, y_m, &x, &y);
-  cairo_rectangle (cr, x - size_px, y - size_px, 2 * size_px, 2 * size_px);
-  set_colour (cr, &scene->palette->sheet, 1);
-  cairo_fill_preserve (cr);
-  set_colour (cr, &scene->palette->ink, 1);
-  cairo_set_line_width (cr, 1.5);
-  cairo_stroke (cr);
-}
-
-/* A selected wall is underlaid; the only one shows its corners, to be dragged. */
-static void
-draw_selected_wall (const UtScene *scene, cairo_t *cr, const char *pick_id, gboolean only)
-{
-  const UtPlan *plan = ut_desk_plan (scene->desk);
-  guint storey, index;
-
-  if (!ut_plan_find_picked_wall (plan, pick_id, &storey, &index) || storey != scene->storey)
-    return;
-  const UtWall *wall = ut_plan_storey (plan, storey)->walls->pdata[index];
-  trace (scene, cr, wall->points);
-  cairo_set_line_width (cr, 9);
-  cairo_set_line_join (cr, CAIRO_LINE_JOIN_ROUND);
-  set_colour (cr, &scene->palette->ink, 0.22);
-  cairo_stroke (cr);
-  for (guint i = 0; i < wall->points->len && only; i++)
-    draw_corner (scene, cr, g_array_index (wall->points, UtPoint, i).x_m, g_array_index (wall->points, UtPoint, i).y_m, 4.5);
-}
-
-/* What the next point is drawn to, by a mark of its own. */
-static void
-draw_snap (const UtScene *scene, cairo_t *cr, double x, double y, UtSnap snap)
-{
-  set_colour (cr, &scene->palette->ink, 1);
-  cairo_set_line_width (cr, 1.5);
-  switch (snap)
-    {
-    case UT_SNAP_END:
-    case UT_SNAP_CLOSE:
-      cairo_rectangle (cr, x - 7, y - 7, 14, 14);
-      break;
-    case UT_SNAP_WALL:
-      cairo_move_to (cr, x - 7, y - 7);
-      cairo_line_to (cr, x + 7, y + 7);
-      cairo_move_to (cr, x - 7, y + 7);
-      cairo_line_to (cr, x + 7, y - 7);
-      break;
-    case UT_SNAP_RIGHT_ANGLE:
-      cairo_move_to (cr, x - 9, y);
-      cairo_line_to (cr, x - 9, y - 9);
-      cairo_line_to (cr, x, y - 9);
-      break;
-    case UT_SNAP_GRID:
-    case UT_SNAP_NONE:
-      cairo_arc (cr, x, y, 3, 0, 2 * G_PI);
-      break;
-    }
-  cairo_stroke (cr);
-}
-
-/* Labels leave the figure of the piece being drawn alone. */
-static void
-take_wall_figure (const UtScene *scene, GArray *boxes)
-{
-  double x, y, length_m, direction_deg;
-
-  if (scene->wall == NULL || !ut_wall_draw_piece (scene->wall, &length_m, &direction_deg))
-    return;
-  ut_view_to_sheet (scene->view, scene->wall->next.x_m, scene->wall->next.y_m, &x, &y);
-  ut_boxes_take (boxes, x - 10, y - 10, 120, 36);
-}
-
-static void
-draw_wall_in_progress (const UtScene *scene, cairo_t *cr)
-{
-  const UtWallDraw *draw = scene->wall;
-  double x, y, length_m, direction_deg;
-
-  if (draw == NULL)
-    return;
-  if (draw->points != NULL && draw->points->len > 0)
-    {
-      trace (scene, cr, draw->points);
-      cairo_set_line_width (cr, 3);
-      set_colour (cr, &scene->palette->ink, 0.8);
-      cairo_stroke_preserve (cr);
-      cairo_new_path (cr);
-      for (guint i = 0; i < draw->points->len; i++)
-        draw_corner (scene, cr, g_array_index (draw->points, UtPoint, i).x_m, g_array_index (draw->points, UtPoint, i).y_m, 3.5);
-    }
-  if (!draw->has_next)
-    return;
-  ut_view_to_sheet (scene->view, draw->next.x_m, draw->next.y_m, &x, &y);
-  if (ut_wall_draw_piece (draw, &length_m, &direction_deg))
-    {
-      const UtPoint *from = &g_array_index (draw->points, UtPoint, draw->points->len - 1);
-      g_autofree char *length = ut_report_figure (length_m, 2), *direction = ut_report_figure (direction_deg, 0);
-      g_autofree char *text = draw->typed != NULL ? g_strdup_printf ("%s| m, %s°", draw->typed->str, direction) : g_strdup_printf ("%s m, %s°", length, direction);
-      double from_x, from_y;
-
-      ut_view_to_sheet (scene->view, from->x_m, from->y_m, &from_x, &from_y);
-      cairo_set_dash (cr, (double[]){ 6, 4 }, 2, 0);
-      cairo_set_line_width (cr, 2);
-      set_colour (cr, &scene->palette->ink, 0.8);
-      cairo_move_to (cr, from_x, from_y);
-      cairo_line_to (cr, x, y);
-      cairo_stroke (cr);
-      cairo_set_dash (cr, NULL, 0, 0);
-      ut_text_draw (cr, text, x + 12, y + 8, 12, &scene->palette->ink, &scene->palette->sheet);
-    }
-  draw_snap (scene, cr, x, y, draw->snap);
-}
-
-/* The part of the wall that the opening will take. */
-static void
-draw_opening_in_progress (const UtScene *scene, cairo_t *cr)
-{
-  const UtOpeningDraw *draw = scene->opening;
-  const UtPlan *plan = ut_desk_plan (scene->desk);
-  double before_m = 0;
-
-  if (draw == NULL || !draw->active || draw->storey != scene->storey || draw->wall >= ut_plan_storey (plan, draw->storey)->walls->len)
-    return;
-  const GArray *points = ((const UtWall *) ut_plan_storey (plan, draw->storey)->walls->pdata[draw->wall])->points;
-  double from_m = MIN (draw->from_m, draw->to_m), to_m = MAX (draw->from_m, draw->to_m);
-  g_autofree char *length = ut_report_figure (to_m - from_m, 2);
-  g_autofree char *text = g_strconcat (length, " m", NULL);
-  for (guint i = 0; i + 1 < points->len; i++)
-    {
-      UtPoint a = g_array_index (points, UtPoint, i), b = g_array_index (points, UtPoint, i + 1);
-      double piece_m = hypot (b.x_m - a.x_m, b.y_m - a.y_m), first = (from_m - before_m) / piece_m, last = (to_m - before_m) / piece_m, x, y;
-
-      if (last > 0 && first < 1)
-        {
-          ut_view_to_sheet (scene->view, a.x_m + CLAMP (first, 0, 1) * (b.x_m - a.x_m), a.y_m + CLAMP (first, 0, 1) * (b.y_m - a.y_m), &x, &y);
-          cairo_move_to (cr, x, y);
-          ut_view_to_sheet (scene->view, a.x_m + CLAMP (last, 0, 1) * (b.x_m - a.x_m), a.y_m + CLAMP (last, 0, 1) * (b.y_m - a.y_m), &x, &y);
-          cairo_line_to (cr, x, y);
-          set_colour (cr, &scene->palette->ink, 0.5);
-          cairo_set_line_width (cr, 8);
-          cairo_stroke (cr);
-          ut_text_draw (cr, text, x + 10, y + 6, 12, &scene->palette->ink, &scene->palette->sheet);
-        }
-      before_m += piece_m;
-    }
-}
-
-/* A line from cross to cross, with what it measures beside its end. */
-static void
-draw_measure (const UtScene *scene, cairo_t *cr)
-{
-  const UtMeasure *measure = scene->measure;
-  g_autofree char *text = measure != NULL && measure->storey == scene->storey ? ut_measure_text (measure, scene->desk) : NULL;
-  double x0, y0, x1, y1, width_px;
-
-  if (text == NULL)
-    return;
-  ut_view_to_sheet (scene->view, measure->from.x_m, measure->from.y_m, &x0, &y0);
-  ut_view_to_sheet (scene->view, measure->to.x_m, measure->to.y_m, &x1, &y1);
-  set_colour (cr, &scene->palette->ink, 1);
-  cairo_set_line_width (cr, 1.5);
-  cairo_move_to (cr, x0, y0);
-  cairo_line_to (cr, x1, y1);
-  for (int end = 0; end < 2; end++)
-    {
-      double x = end == 0 ? x0 : x1, y = end == 0 ? y0 : y1;
-
-      cairo_move_to (cr, x - 6, y);
-      cairo_line_to (cr, x + 6, y);
-      cairo_move_to (cr, x, y - 6);
-      cairo_line_to (cr, x, y + 6);
-    }
-  cairo_stroke (cr);
-  width_px = ut_text_width (text, 12);
-  ut_text_draw (cr, text, CLAMP (x1 + 12, 4, MAX (scene->view->width_px - width_px - 8, 4)), y1 + 8, 12, &scene->palette->ink, &scene->palette->sheet);
-}
-
-/* What to do next, along the upper edge. */
-static void
-draw_hint (const UtScene *scene, cairo_t *cr, const char *text)
-{
-  UtTextStyle style = { .size = 13, .width = MAX (scene->view->width_px - 120, 100), .wrap = TRUE, .plate = TRUE };
-
-  ut_text_place (cr, text, &style, CORNER_PX, CORNER_PX, &scene->palette->ink, &scene->palette->sheet);
-}
-
-static void
-draw_backdrop_work (const UtScene *scene, cairo_t *cr)
-{
-  const UtBackdropWork *work = scene->backdrop;
-  double x0, y0, x1, y1;
-
-  if (work == NULL)
-    return;
-  if (work->n_points > 0)
-    {
-      UtPoint to = work->n_points == 2 ? work->points[1] : work->next;
-
-      ut_view_to_sheet (scene->view, work->points[0].x_m, work->points[0].y_m, &x0, &y0);
-      ut_view_to_sheet (scene->view, to.x_m, to.y_m, &x1, &y1);
-      set_colour (cr, &scene->palette->sheet, 0.8);
-      cairo_set_line_width (cr, 4);
-      cairo_move_to (cr, x0, y0);
-      cairo_line_to (cr, x1, y1);
-      cairo_stroke_preserve (cr);
-      set_colour (cr, &scene->palette->ink, 1);
-      cairo_set_line_width (cr, 1.5);
-      cairo_stroke (cr);
-      draw_corner (scene, cr, work->points[0].x_m, work->points[0].y_m, 3.5);
-      draw_corner (scene, cr, to.x_m, to.y_m, 3.5);
-    }
-  g_autofree char *text = ut_backdrop_work_text (work, scene->desk);
-  draw_hint (scene, cr, text);
-}
-
-static void
-draw_selection (const UtScene *scene, cairo_t *cr)
-{
-  const UtPlan *plan = ut_desk_plan (scene->desk);
-  UtSelection *selection = ut_desk_selection (scene->desk);
-
-  for (guint i = 0; i < ut_selection_size (selection); i++)
-    {
-      const UtPick *pick = ut_selection_pick (selection, i);
-      const UtRadio *radio = ut_plan_radio (plan, pick->kind, pick->id);
-      double x_px, y_px;
-
-      if (pick->kind == UT_KIND_WALL)
-        draw_selected_wall (scene, cr, pick->id, ut_selection_size (selection) == 1);
-      if (radio == NULL || !is_here (scene, plan, radio))
-        continue;
-      place_of (scene, radio, &x_px, &y_px);
-      cairo_set_line_width (cr, 2);
-      set_colour (cr, &scene->palette->ink, 1);
-      cairo_rectangle (cr, x_px - MARK_PX, y_px - MARK_PX, 2 * MARK_PX, 2 * MARK_PX);
-      cairo_stroke (cr);
-      if (pick->kind == UT_KIND_CELL && ut_selection_size (selection) == 1)
-        draw_power_handle (scene, cr, radio);
-    }
-}
-
-static void
-draw_band (const UtScene *scene, cairo_t *cr)
-{
-  double x0, y0, x1, y1;
-
-  if (scene->drag->kind != UT_DRAG_BAND)
-    return;
-  ut_view_to_sheet (scene->view, scene->drag->x0_m, scene->drag->y0_m, &x0, &y0);
-  ut_view_to_sheet (scene->view, scene->drag->x1_m, scene->drag->y1_m, &x1, &y1);
-  cairo_rectangle (cr, MIN (x0, x1), MIN (y0, y1), fabs (x1 - x0), fabs (y1 - y0));
-  set_colour (cr, &scene->palette->ink, 0.08);
-  cairo_fill_preserve (cr);
-  set_colour (cr, &scene->palette->ink, 1);
-  cairo_set_line_width (cr, 1);
-  cairo_set_dash (cr, (double[]){ 4, 3 }, 2, 0);
-  cairo_stroke (cr);
-  cairo_set_dash (cr, NULL, 0, 0);
-}
-
 /* ---- who interferes with the selected link ---- */
 
 static void
@@ -524,7 +183,7 @@ draw_interferers (const UtScene *scene, cairo_t *cr, GArray *boxes)
     return;
   down = study->question.direction == UT_DIRECTION_DOWN;
   receiver = down ? &ut_plan_terminal (plan, link->terminal)->radio : &ut_plan_cell (plan, (guint) link->cell)->radio;
-  place_of (scene, receiver, &x1, &y1);
+  ut_scene_place (scene, receiver, &x1, &y1);
   for (guint i = link->interferers->len; i-- > 0;)
     {
       const UtInterferer *one = &g_array_index (link->interferers, UtInterferer, i);
@@ -533,10 +192,10 @@ draw_interferers (const UtScene *scene, cairo_t *cr, GArray *boxes)
       g_autofree char *figure = ut_report_figure (one->dbm, 1);
       g_autofree char *text = g_strdup_printf ("%s %s dBm", one->id, figure);
 
-      if (sender == NULL || share < 0.01 || !is_here (scene, plan, sender) || !is_here (scene, plan, receiver))
+      if (sender == NULL || share < 0.01 || !ut_scene_has (scene, plan, sender) || !ut_scene_has (scene, plan, receiver))
         continue;
-      place_of (scene, sender, &x0, &y0);
-      set_colour (cr, &scene->palette->ink, 0.45);
+      ut_scene_place (scene, sender, &x0, &y0);
+      ut_scene_colour (cr, &scene->palette->ink, 0.45);
       draw_arrow (cr, x0, y0, x1, y1, 1 + 7 * share);
       label_arrow (scene, cr, boxes, text, x0, y0, x1, y1);
     }
@@ -566,7 +225,7 @@ key_rows (double width_px)
     {
       double entry = key_entry_width (key_classes[i]);
 
-      if (x + entry > width_px - 2 * CORNER_PX && x > 0)
+      if (x + entry > width_px - 2 * UT_CORNER_PX && x > 0)
         {
           rows++;
           x = 0;
@@ -590,10 +249,10 @@ draw_key_entry (const UtScene *scene, cairo_t *cr, UtMarginClass margin, double 
 
   ut_margin_line (margin, dashes, &n_dashes, &width);
   for (int k = 0; k < n_dashes; k++)
-    dashes[k] *= MARK_PX;
+    dashes[k] *= UT_MARK_PX;
   cairo_set_dash (cr, dashes, n_dashes, 0);
-  cairo_set_line_width (cr, width * MARK_PX);
-  set_colour (cr, &scene->palette->margin[margin], 1);
+  cairo_set_line_width (cr, width * UT_MARK_PX);
+  ut_scene_colour (cr, &scene->palette->margin[margin], 1);
   cairo_move_to (cr, x, y);
   cairo_line_to (cr, x + KEY_LINE_PX, y);
   cairo_stroke (cr);
@@ -605,12 +264,12 @@ static void
 draw_key (const UtScene *scene, cairo_t *cr)
 {
   double width_px = scene->view->width_px, height_px = ut_scene_key_height (width_px), top_px = scene->view->height_px - height_px;
-  double x = CORNER_PX, y = top_px + 3 + KEY_ROW_PX / 2;
+  double x = UT_CORNER_PX, y = top_px + 3 + KEY_ROW_PX / 2;
 
-  set_colour (cr, &scene->palette->sheet, 1);
+  ut_scene_colour (cr, &scene->palette->sheet, 1);
   cairo_rectangle (cr, 0, top_px, width_px, height_px);
   cairo_fill (cr);
-  set_colour (cr, &scene->palette->faint_ink, 0.5);
+  ut_scene_colour (cr, &scene->palette->faint_ink, 0.5);
   cairo_set_line_width (cr, 1);
   cairo_move_to (cr, 0, top_px + 0.5);
   cairo_line_to (cr, width_px, top_px + 0.5);
@@ -619,9 +278,9 @@ draw_key (const UtScene *scene, cairo_t *cr)
     {
       double entry = key_entry_width (key_classes[i]);
 
-      if (x + entry > width_px - CORNER_PX && x > CORNER_PX)
+      if (x + entry > width_px - UT_CORNER_PX && x > UT_CORNER_PX)
         {
-          x = CORNER_PX;
+          x = UT_CORNER_PX;
           y += KEY_ROW_PX;
         }
       draw_key_entry (scene, cr, key_classes[i], x, y);
@@ -633,10 +292,10 @@ static void
 draw_scale_bar (const UtScene *scene, cairo_t *cr)
 {
   double length_m = ut_view_round_length_m (scene->view, 120), length_px = length_m * scene->view->scale_px_m;
-  double x = CORNER_PX, y = scene->view->height_px - ut_scene_key_height (scene->view->width_px) - CORNER_PX;
+  double x = UT_CORNER_PX, y = scene->view->height_px - ut_scene_key_height (scene->view->width_px) - UT_CORNER_PX;
   g_autofree char *text = length_m < 1 ? g_strdup_printf ("%g cm", length_m * 100) : g_strdup_printf ("%g m", length_m);
 
-  set_colour (cr, &scene->palette->ink, 1);
+  ut_scene_colour (cr, &scene->palette->ink, 1);
   cairo_set_line_width (cr, 2);
   cairo_move_to (cr, x, y - 6);
   cairo_line_to (cr, x, y);
@@ -654,7 +313,7 @@ draw_north (const UtScene *scene, cairo_t *cr)
   cairo_save (cr);
   cairo_translate (cr, scene->view->width_px - 28, 34);
   cairo_rotate (cr, turn);
-  set_colour (cr, &scene->palette->ink, 1);
+  ut_scene_colour (cr, &scene->palette->ink, 1);
   cairo_move_to (cr, 0, -16);
   cairo_line_to (cr, 6, 10);
   cairo_line_to (cr, 0, 5);
@@ -694,23 +353,17 @@ draw_living (const UtScene *scene, cairo_t *cr)
   options.plates = TRUE;
   options.boxes = boxes;
   ut_paint_take_radios (boxes, plan, &options);
-  take_power_handle (scene, boxes);
-  take_wall_figure (scene, boxes);
+  ut_scene_take_marks (scene, boxes);
   draw_interferers (scene, cr, boxes);
   draw_old_links (scene, cr, options);
   ut_paint_plan (cr, plan, ut_desk_answer (scene->desk), &options);
-  draw_selection (scene, cr);
-  draw_band (scene, cr);
-  draw_wall_in_progress (scene, cr);
-  draw_opening_in_progress (scene, cr);
-  draw_measure (scene, cr);
-  draw_backdrop_work (scene, cr);
+  ut_scene_draw_marks (scene, cr);
   draw_key (scene, cr);
   draw_scale_bar (scene, cr);
   draw_north (scene, cr);
   if (scene->focused)
     {
-      set_colour (cr, &scene->palette->ink, 0.6);
+      ut_scene_colour (cr, &scene->palette->ink, 0.6);
       cairo_set_line_width (cr, 2);
       cairo_rectangle (cr, 1, 1, scene->view->width_px - 2, scene->view->height_px - 2);
       cairo_stroke (cr);

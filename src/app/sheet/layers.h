@@ -28,6 +28,15 @@ typedef struct
   int device_scale;
 } UtScene;
 
+/* Room between what is fixed and the sheet's edges. */
+#define UT_CORNER_PX 12.0
+/* Size of a cell's mark. */
+#define UT_MARK_PX 10.0
+
+void ut_scene_colour (cairo_t *cr, const UtColour *colour, double alpha);
+void ut_scene_place (const UtScene *scene, const UtRadio *radio, double *x_px, double *y_px);
+gboolean ut_scene_has (const UtScene *scene, const UtPlan *plan, const UtRadio *radio); /* on the storey shown */
+
 /* The kept picture, and for what it was made. */
 typedef struct
 {

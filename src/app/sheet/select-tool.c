@@ -3,6 +3,7 @@
 #include <glib/gi18n.h>
 
 #include "hit.h"
+#include "plan-edit.h"
 #include "tool.h"
 #include "wall-tool.h"
 #include "wall-edits.h"
@@ -176,6 +177,97 @@ knob_at (UtDesk *desk, const UtPointer *pointer)
   return hypot (dx_px, dy_px) <= 8 ? cell : NULL;
 }
 
+gboolean
+ut_is_directional (const UtPlan *plan, const UtRadio *radio)
+{
+  int index = ut_plan_find_antenna (plan, radio->antenna);
+
+  return index >= 0 && ut_plan_antenna (plan, (guint) index)->pattern != UT_ANTENNA_ISOTROPIC;
+}
+
+/* The one selected radio whose turning handle is under the pointer, or NULL. */
+static const UtRadio *
+turn_handle_at (UtDesk *desk, const UtPointer *pointer, UtRadioKind *kind)
+{
+  UtSelection *selection = ut_desk_selection (desk);
+  const UtPlan *plan = ut_desk_plan (desk);
+  const UtRadio *radio;
+
+  if (ut_selection_size (selection) != 1)
+    return NULL;
+  *kind = ut_selection_pick (selection, 0)->kind;
+  radio = ut_plan_radio (plan, *kind, ut_selection_pick (selection, 0)->id);
+  if (radio == NULL || !ut_is_directional (plan, radio) || ut_plan_find_storey (plan, radio->storey) != (int) pointer->storey)
+    return NULL;
+  double azimuth = radio->azimuth_deg * G_PI / 180;
+  double dx_px = (pointer->x_m - radio->x_m) * pointer->px_per_m - UT_TURN_HANDLE_PX * sin (azimuth);
+  double dy_px = (pointer->y_m - radio->y_m) * pointer->px_per_m - UT_TURN_HANDLE_PX * cos (azimuth);
+  return hypot (dx_px, dy_px) <= 8 ? radio : NULL;
+}
+
+/* The terminal whose link is under the pointer in the half that its cell has. */
+static const UtRadio *
+link_end_at (UtDesk *desk, const UtPointer *pointer, const UtHit *hit)
+{
+  const UtPlan *plan = ut_desk_plan (desk);
+  UtStudy *study = ut_desk_answer (desk);
+
+  if (hit->kind != UT_HIT_LINK || study == NULL)
+    return NULL;
+  for (guint i = 0; i < study->links->len; i++)
+    {
+      const UtLinkAnswer *link = ut_study_link (study, i);
+
+      if (link->terminal != hit->index || link->cell < 0)
+        continue;
+      const UtRadio *terminal = &ut_plan_terminal (plan, link->terminal)->radio, *cell = &ut_plan_cell (plan, (guint) link->cell)->radio;
+      if (hypot (cell->x_m - pointer->x_m, cell->y_m - pointer->y_m) < hypot (terminal->x_m - pointer->x_m, terminal->y_m - pointer->y_m))
+        return terminal;
+    }
+  return NULL;
+}
+
+/* The plan with the terminal served by the cell under the pointer; NULL: there is none. */
+static const UtPlan *
+with_served (const UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer)
+{
+  UtHit hit = ut_hit (drag->plan, NULL, pointer->storey, pointer->x_m, pointer->y_m, 2 * UT_REACH_PX / pointer->px_per_m, 0);
+  int index = ut_plan_find_terminal (drag->plan, drag->id);
+  UtTerminal *terminal;
+
+  (void) desk;
+  for (guint skip = 1; hit.kind != UT_HIT_CELL && hit.kind != UT_HIT_NOTHING && skip < 8; skip++)
+    hit = ut_hit (drag->plan, NULL, pointer->storey, pointer->x_m, pointer->y_m, 2 * UT_REACH_PX / pointer->px_per_m, skip);
+  if (hit.kind != UT_HIT_CELL || index < 0)
+    return NULL;
+  terminal = ut_terminal_copy (ut_plan_terminal (drag->plan, (guint) index));
+  g_free (terminal->cell);
+  terminal->cell = g_strdup (ut_plan_cell (drag->plan, hit.index)->radio.id);
+  return ut_plan_with_terminal (drag->plan, index, terminal);
+}
+
+/* Towards the pointer, in steps of 5 degrees unless it is held off the grid. */
+static const UtPlan *
+with_turned (const UtSelectDrag *drag, const UtPointer *pointer)
+{
+  const UtRadio *radio = ut_plan_radio (drag->plan, drag->radio, drag->id);
+  double azimuth_deg = fmod (atan2 (pointer->x_m - radio->x_m, pointer->y_m - radio->y_m) * 180 / G_PI + 360, 360), step_deg = pointer->no_snap ? 0.1 : 5;
+  int index = drag->radio == UT_KIND_CELL ? ut_plan_find_cell (drag->plan, drag->id) : ut_plan_find_terminal (drag->plan, drag->id);
+
+  azimuth_deg = fmod (round (azimuth_deg / step_deg) * step_deg, 360);
+  azimuth_deg = round (azimuth_deg * 10) / 10;
+  if (drag->radio == UT_KIND_CELL)
+    {
+      UtCell *cell = ut_cell_copy (ut_plan_cell (drag->plan, (guint) index));
+
+      cell->radio.azimuth_deg = azimuth_deg;
+      return ut_plan_with_cell (drag->plan, index, cell);
+    }
+  UtTerminal *terminal = ut_terminal_copy (ut_plan_terminal (drag->plan, (guint) index));
+  terminal->radio.azimuth_deg = azimuth_deg;
+  return ut_plan_with_terminal (drag->plan, index, terminal);
+}
+
 void
 ut_select_begin (UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer)
 {
@@ -196,6 +288,20 @@ ut_select_begin (UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer)
       drag->kind = UT_DRAG_POWER;
       drag->id = g_strdup (cell->id);
       drag->power0_dbm = cell->power_dbm;
+      return;
+    }
+  const UtRadio *turned = turn_handle_at (desk, pointer, &drag->radio);
+  if (turned != NULL)
+    {
+      drag->kind = UT_DRAG_TURN;
+      drag->id = g_strdup (turned->id);
+      return;
+    }
+  const UtRadio *served = link_end_at (desk, pointer, &hit);
+  if (served != NULL)
+    {
+      drag->kind = UT_DRAG_SERVE;
+      drag->id = g_strdup (served->id);
       return;
     }
   if (ut_vertex_at (desk, pointer, &drag->wall, &drag->vertex))
@@ -317,6 +423,19 @@ ut_select_update (UtSelectDrag *drag, UtDesk *desk, const UtPointer *pointer)
         ut_desk_set_draft (desk, ut_plan_with_vertex (drag->plan, drag->storey, drag->wall, drag->vertex, to.x_m, to.y_m));
         break;
       }
+    case UT_DRAG_TURN:
+      ut_desk_set_draft (desk, with_turned (drag, pointer));
+      break;
+    case UT_DRAG_SERVE:
+      {
+        const UtPlan *served = with_served (drag, desk, pointer);
+
+        if (served != NULL)
+          ut_desk_set_draft (desk, served);
+        else
+          ut_desk_drop_draft (desk);
+        break;
+      }
     case UT_DRAG_NONE:
       break;
     }
@@ -339,6 +458,10 @@ ut_select_end (UtSelectDrag *drag, UtDesk *desk)
     label = ut_desk_step_label (desk, _ ("Move"));
   else if (drag->kind == UT_DRAG_VERTEX && ut_desk_has_draft (desk))
     label = ut_desk_step_label (desk, _ ("Move Corner of"));
+  else if (drag->kind == UT_DRAG_TURN && ut_desk_has_draft (desk))
+    label = g_strconcat (_ ("Turn"), " ", drag->id, NULL);
+  else if (drag->kind == UT_DRAG_SERVE && ut_desk_has_draft (desk))
+    label = g_strconcat (_ ("Choose Cell of"), " ", drag->id, NULL);
   else if (drag->kind == UT_DRAG_POWER && ut_desk_has_draft (desk))
     label = g_strconcat (_ ("Set Power of"), " ", drag->id, NULL);
   if (label != NULL)
