@@ -408,3 +408,47 @@ ut_desk_place (UtDesk *self, UtRadioKind kind, const char *storey, double x_m, d
   ut_desk_apply (self, next, label, NULL);
   ut_selection_set_one (self->selection, kind, id);
 }
+
+/* A radio of the user's own presets, as it is there. */
+static void
+place_own (UtDesk *self, const UtPreset *preset, const char *storey, double x_m, double y_m)
+{
+  g_autoptr (UtSelection) one = ut_selection_new ();
+  const UtRadio *radio = ut_plan_radio (preset->plan, preset->kind, preset->id);
+  g_autoptr (UtPlan) fragment = NULL;
+  g_autofree char *added = NULL;
+  const UtPlan *plan = ut_document_plan (self->document), *next;
+  int index = ut_plan_find_storey (plan, storey);
+
+  ut_selection_add (one, preset->kind, preset->id);
+  fragment = (UtPlan *) ut_plan_fragment (preset->plan, one);
+  next = ut_plan_with_fragment (plan, fragment, (guint) MAX (index, 0), x_m - radio->x_m, y_m - radio->y_m, FALSE, &added);
+  ut_desk_apply_and_select (self, next, _ ("Place"), added);
+}
+
+void
+ut_desk_place_preset (UtDesk *self, const UtPreset *preset, const char *storey, double x_m, double y_m)
+{
+  const UtPlan *plan = ut_document_plan (self->document), *placed;
+  g_autofree char *id = NULL, *label = NULL;
+  UtTerminal *terminal;
+
+  if (preset->plan != NULL)
+    {
+      place_own (self, preset, storey, x_m, y_m);
+      return;
+    }
+  if (isnan (preset->height_m) || preset->kind != UT_KIND_TERMINAL)
+    {
+      ut_desk_place (self, preset->kind, storey, x_m, y_m);
+      return;
+    }
+  id = ut_plan_free_terminal_id (plan);
+  label = g_strconcat (_ ("Place"), " ", id, NULL);
+  placed = with_new_terminal (plan, id, storey, x_m, y_m);
+  terminal = ut_terminal_copy (ut_plan_terminal (placed, placed->terminals->len - 1));
+  terminal->radio.height_m = preset->height_m;
+  ut_desk_apply (self, ut_plan_with_terminal (placed, (int) placed->terminals->len - 1, terminal), label, NULL);
+  ut_plan_unref (placed);
+  ut_selection_set_one (self->selection, UT_KIND_TERMINAL, id);
+}

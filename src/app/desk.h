@@ -2,6 +2,7 @@
 #pragma once
 
 #include "document.h"
+#include "presets.h"
 #include "selection.h"
 #include "solving.h"
 
@@ -63,6 +64,9 @@ void ut_desk_duplicate_selected (UtDesk *desk);
 
 /* Adds a radio at a place of a storey and selects it. */
 void ut_desk_place (UtDesk *desk, UtRadioKind kind, const char *storey, double x_m, double y_m);
+
+/* The same by a preset. */
+void ut_desk_place_preset (UtDesk *desk, const UtPreset *preset, const char *storey, double x_m, double y_m);
 
 /* The cell's set power, as one coalesced step or as draft; held to its limits. */
 const UtPlan *ut_plan_with_set_power (const UtPlan *plan, UtRadioKind kind, const char *id, double power_dbm) G_GNUC_WARN_UNUSED_RESULT;

@@ -9,7 +9,7 @@
 struct _UtStartPage
 {
   GtkWidget parent;
-  GtkWidget *child;
+  GtkWidget *child, *first;
 };
 
 G_DEFINE_FINAL_TYPE (UtStartPage, ut_start_page, GTK_TYPE_WIDGET)
@@ -110,10 +110,17 @@ ut_start_page_init (UtStartPage *self)
   gtk_widget_set_valign (box, GTK_ALIGN_CENTER);
   gtk_widget_add_css_class (box, "start-page");
   gtk_box_append (GTK_BOX (box), line (_ ("Sketch a floor, place cells and terminals, and see whether every target can be met and with which least powers."), "heading"));
-  gtk_box_append (GTK_BOX (box), choice (_ ("New plan"), _ ("An empty storey; drop a picture of the floor on it, or draw walls."), "win.start-new", NULL));
+  self->first = choice (_ ("New plan"), _ ("An empty storey; drop a picture of the floor on it, or draw walls."), "win.start-new", NULL);
+  gtk_box_append (GTK_BOX (box), self->first);
   gtk_box_append (GTK_BOX (box), choice (_ ("Open a plan…"), NULL, "win.open", NULL));
   add_recent (GTK_BOX (box));
   add_examples (GTK_BOX (box));
   gtk_scrolled_window_set_child (GTK_SCROLLED_WINDOW (self->child), box);
   gtk_widget_set_parent (self->child, GTK_WIDGET (self));
+}
+
+void
+ut_start_page_focus (UtStartPage *self)
+{
+  gtk_widget_grab_focus (self->first);
 }

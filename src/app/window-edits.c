@@ -165,6 +165,33 @@ ACTION (repeat_by_cb)
     repeat_asked (values, data);
 }
 
+/* ---- presets ---- */
+
+ACTION (keep_preset_cb)
+{
+  UtWindow *self = data;
+  UtSelection *selection = ut_desk_selection (self->desk);
+  g_autoptr (GError) error = NULL;
+
+  IGNORE_ACTION;
+  if (ut_selection_size (selection) != 1 || ut_selection_n_radios (selection) != 1)
+    return;
+  const UtPick *pick = ut_selection_pick (selection, 0);
+  if (!ut_presets_add (ut_presets_get_default (), plan_of (self), pick->kind, pick->id, &error))
+    ut_compat_tell (data, _ ("The preset could not be kept"), error->message);
+}
+
+ACTION (open_presets_cb)
+{
+  GFile *file = ut_presets_file (ut_presets_get_default ());
+
+  IGNORE_ACTION;
+  if (g_file_query_exists (file, NULL))
+    ut_window_open_file (UT_APPLICATION (gtk_window_get_application (data)), data, file);
+  else
+    ut_compat_tell (data, _ ("There are no presets yet"), _ ("Select a radio and keep it as a preset in the menu of the sheet."));
+}
+
 /* ---- walls ---- */
 
 ACTION (join_walls_cb)
@@ -333,6 +360,8 @@ ut_window_add_edit_actions (UtWindow *self)
     { .name = "distribute", .activate = distribute_cb, .parameter_type = "s" },
     { .name = "repeat", .activate = repeat_cb },
     { .name = "repeat-by", .activate = repeat_by_cb, .parameter_type = "(dddd)" },
+    { .name = "keep-preset", .activate = keep_preset_cb },
+    { .name = "open-presets", .activate = open_presets_cb },
     { .name = "join-walls", .activate = join_walls_cb },
     { .name = "split-wall", .activate = split_wall_cb },
     { .name = "storey-add", .activate = storey_add_cb },
@@ -366,4 +395,5 @@ ut_window_show_edits (UtWindow *self)
       g_simple_action_set_enabled (G_SIMPLE_ACTION (g_action_map_lookup_action (G_ACTION_MAP (self), needs[i].action)), enough);
     }
   g_simple_action_set_enabled (G_SIMPLE_ACTION (g_action_map_lookup_action (G_ACTION_MAP (self), "split-wall")), n == 1 && n_walls == 1);
+  g_simple_action_set_enabled (G_SIMPLE_ACTION (g_action_map_lookup_action (G_ACTION_MAP (self), "keep-preset")), n == 1 && n_walls == 0);
 }

@@ -5,6 +5,7 @@
 #include "links-panel.h"
 #include "recovery.h"
 #include "start-page.h"
+#include "things-panel.h"
 #include "window.h"
 
 struct _UtWindow
@@ -14,8 +15,10 @@ struct _UtWindow
   gboolean closing; /* the question about unsaved changes was answered */
   UtSheet *sheet;
   UtLinksPanel *links;
+  UtThingsPanel *things;
   UtDetails *details;
-  GtkLabel *title_label, *subtitle_label, *verdict_label, *hold_label, *tray_cell, *tray_terminal;
+  GtkLabel *title_label, *subtitle_label, *verdict_label, *hold_label;
+  GtkBox *tray;
   GtkWidget *undo_button, *redo_button;
   GtkDropDown *aim_drop, *storey_drop;
   GtkAdjustment *hold_adjustment;

@@ -459,18 +459,19 @@ ut_window_class_init (UtWindowClass *class)
   GTK_WINDOW_CLASS (class)->close_request = ut_window_close_request;
   g_type_ensure (UT_TYPE_SHEET);
   g_type_ensure (UT_TYPE_LINKS_PANEL);
+  g_type_ensure (UT_TYPE_THINGS_PANEL);
   g_type_ensure (UT_TYPE_DETAILS);
   g_type_ensure (UT_TYPE_START_PAGE);
   gtk_widget_class_set_template_from_resource (widget_class, "/io/undertone/Undertone/window.ui");
   gtk_widget_class_bind_template_child (widget_class, UtWindow, sheet);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, links);
+  gtk_widget_class_bind_template_child (widget_class, UtWindow, things);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, details);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, title_label);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, subtitle_label);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, verdict_label);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, hold_label);
-  gtk_widget_class_bind_template_child (widget_class, UtWindow, tray_cell);
-  gtk_widget_class_bind_template_child (widget_class, UtWindow, tray_terminal);
+  gtk_widget_class_bind_template_child (widget_class, UtWindow, tray);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, undo_button);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, redo_button);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, aim_drop);
@@ -499,8 +500,7 @@ ut_window_init (UtWindow *self)
   ut_sheet_set_menu (self->sheet, self->sheet_menu);
   ut_window_fill_recent (self);
   add_shortcuts (self);
-  ut_tray_make_source (GTK_WIDGET (self->tray_cell), UT_KIND_CELL);
-  ut_tray_make_source (GTK_WIDGET (self->tray_terminal), UT_KIND_TERMINAL);
+  ut_tray_fill (self->tray, ut_presets_get_default ());
   g_signal_connect (drop, "drop", G_CALLBACK (file_dropped_cb), self);
   gtk_widget_add_controller (GTK_WIDGET (self), GTK_EVENT_CONTROLLER (drop));
   ignore_wheel (GTK_WIDGET (self->aim_drop));
@@ -538,6 +538,7 @@ ut_window_set_document (UtWindow *self, UtDocument *document)
   gtk_stack_set_visible_child_name (self->pages, "work");
   ut_sheet_set_desk (self->sheet, desk);
   ut_links_panel_set_up (self->links, ut_desk_solving (desk), ut_desk_selection (desk));
+  ut_things_panel_set_desk (self->things, desk);
   ut_details_set_desk (self->details, desk);
   plan_changed_cb (self);
   selection_changed_cb (self);
@@ -559,7 +560,7 @@ void
 ut_window_show_start (UtWindow *self)
 {
   gtk_stack_set_visible_child_name (self->pages, "start");
-  gtk_widget_child_focus (GTK_WIDGET (self->start_page), GTK_DIR_TAB_FORWARD);
+  ut_start_page_focus (self->start_page);
 }
 
 UtDesk *

@@ -371,6 +371,60 @@ with tempfile.TemporaryDirectory() as folder:
     tap.check("the start page opens an example; a file changed outside is noticed and read again", same("exit", code, 0)
               + [line for line in app.log().splitlines() if re.search("CRITICAL|WARNING|Sanitizer", line)])
 
+    # The same by keys alone: a room with a door, a cell and terminals, all selected, duplicated, moved; undone to the first bytes and redone to the last.
+    app = App(sheet=False)
+    app.wait("the start page", lambda: app.find("push button", "New plan") or app.find("button", "New plan"))
+    app.xdo("mousemove", 5, 5)
+    app.xdo("key", "Return")
+    app.find_sheet()
+    app.wait("an empty plan", lambda: "0 cells, 0 terminals" in app.description())
+    typed = pathlib.Path(folder) / "typed.undertone"
+
+    def plan_now():
+        app.act("save-to", GLib.Variant("s", str(typed)))
+        app.wait("the file", typed.exists)
+        return json.loads(typed.read_text())
+
+    def keys(*words):
+        for word in words:
+            app.xdo("key", word)
+            time.sleep(0.06)
+
+    plan_now()
+    first = typed.read_bytes()
+    keys("w", "Right", "space")
+    for direction, length in (("Right", "9"), ("Up", "6"), ("Left", "9"), ("Down", "6")):
+        keys(f"shift+{direction}", length, "Return")
+    keys("Return")
+    app.wait("the room", lambda: len(plan_now()["storeys"][0]["walls"]) == 1)
+    room = [[round(a, 6) for a in point] for point in plan_now()["storeys"][0]["walls"][0]["points"]]
+    (x, y), faults = room[0], []
+    faults += same("room", room, [[x, y], [x + 9, y], [x + 9, y + 6], [x, y + 6], [x, y]])
+    keys("o", "shift+Right", "shift+Right", "space", "shift+Right", "space")
+    app.wait("the door", lambda: plan_now()["storeys"][0]["walls"][0].get("openings"))
+    door = plan_now()["storeys"][0]["walls"][0]["openings"][0]
+    faults += same("door", [round(door["at_m"], 6), round(door["width_m"], 6)], [2, 1])
+    keys("c", "shift+Up", "shift+Up", "space", "t", "shift+Right", "shift+Right", "space", "shift+Up", "space", "Escape")
+    app.wait("the radios", lambda: "1 cells, 2 terminals" in app.description())
+    keys("ctrl+a", "ctrl+d", "shift+Right", "Up")
+    app.wait("the duplicates", lambda: "2 cells, 4 terminals" in app.description())
+    plan_now()
+    last = typed.read_bytes()
+    while app.describe("undo")[0]:
+        keys("ctrl+z")
+    plan_now()
+    faults += same("undone", typed.read_bytes() == first, True)
+    while app.describe("redo")[0]:
+        keys("ctrl+shift+z")
+    plan_now()
+    faults += same("redone", typed.read_bytes() == last, True)
+    while app.describe("undo")[0]:
+        keys("ctrl+z")
+    plan_now()
+    code = app.quit()
+    tap.check("a plan drawn by keys alone, undone and redone", faults + same("exit", code, 0)
+              + [line for line in app.log().splitlines() if re.search("CRITICAL|WARNING|Sanitizer", line)])
+
     # What is broken is told of and changes nothing.
     broken = pathlib.Path(folder) / "broken.undertone"
     broken.write_text('{"undertone": 1, oops}')

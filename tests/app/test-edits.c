@@ -411,6 +411,44 @@ test_measure (void)
   g_assert_cmpfloat (measured.crossings_db, >, 0);
 }
 
+/* Kept, the radio comes back from the file as it was, under its name and with its antenna; by use only the height is another. */
+static void
+test_presets (void)
+{
+  g_autofree char *folder = g_dir_make_tmp ("presets-XXXXXX", NULL), *path = g_build_filename (folder, "below", "presets.undertone", NULL);
+  g_autoptr (GFile) file = g_file_new_for_path (path);
+  g_autoptr (UtPresets) presets = ut_presets_new (file);
+  g_autoptr (UtDesk) desk = open_desk ("cold-store.undertone"), other = empty_desk ();
+  const UtRadio *from = radio (ut_desk_plan (desk), UT_KIND_TERMINAL, "T5"), *placed;
+  g_autoptr (GError) error = NULL;
+  guint n = ut_presets_count (presets);
+
+  for (guint i = 0; i < n; i++)
+    ut_desk_place_preset (other, ut_presets_get (presets, i), "S1", i, 1);
+  g_assert_cmpuint (ut_desk_plan (other)->terminals->len, ==, n - 1);
+  g_assert_cmpfloat (radio (ut_desk_plan (other), UT_KIND_TERMINAL, "T3")->height_m, ==, 2.3);
+  for (int twice = 0; twice < 2; twice++)
+    {
+      g_assert_true (ut_presets_add (presets, ut_desk_plan (desk), UT_KIND_TERMINAL, "T5", &error));
+      g_assert_no_error (error);
+      g_assert_cmpuint (ut_presets_count (presets), ==, n + 1); /* the same name is the same preset */
+    }
+  g_assert_true (ut_presets_add (presets, ut_desk_plan (desk), UT_KIND_CELL, "C1", &error));
+  g_autoptr (UtPresets) again = ut_presets_new (file);
+  g_assert_cmpuint (ut_presets_count (again), ==, n + 2);
+  g_assert_cmpstr (ut_presets_get (again, n + 1)->name, ==, from->name);
+  ut_desk_place_preset (other, ut_presets_get (again, n + 1), "S1", 7, 8);
+  placed = &ut_plan_terminal (ut_desk_plan (other), ut_desk_plan (other)->terminals->len - 1)->radio;
+  g_assert_cmpstr (placed->name, ==, from->name);
+  g_assert_cmpstr (placed->antenna, ==, from->antenna);
+  g_assert_cmpfloat (placed->height_m, ==, from->height_m);
+  g_assert_cmpfloat_with_epsilon (placed->x_m, 7, 1e-9);
+  assert_is_plan (ut_desk_plan (other));
+  g_assert_true (g_file_set_contents (path, "no plan", -1, NULL));
+  g_assert_false (ut_presets_add (presets, ut_desk_plan (desk), UT_KIND_CELL, "C1", &error));
+  g_assert_nonnull (error);
+}
+
 /* A drag by its handle turns a directional antenna to 5 degrees; a link's end goes to the cell it is dropped on; each is one step. */
 static void
 test_handles (void)
@@ -540,6 +578,7 @@ main (int argc, char **argv)
   g_test_add_func ("/edits/backdrop-scale", test_backdrop_scale);
   g_test_add_func ("/edits/backdrop-tool", test_backdrop_tool);
   g_test_add_func ("/edits/measure", test_measure);
+  g_test_add_func ("/edits/presets", test_presets);
   g_test_add_func ("/edits/handles", test_handles);
   g_test_add_func ("/edits/many-fields", test_many_fields);
   return g_test_run ();

@@ -23,6 +23,8 @@ typedef struct
   const UtOpeningDraw *opening;
   const UtMeasure *measure;
   const UtBackdropWork *backdrop;
+  gboolean cursor; /* the keyboard's, at this place */
+  double cursor_x_m, cursor_y_m;
   gboolean focused;
   gboolean ghost; /* the storey below is shown faintly */
   int device_scale;

@@ -407,6 +407,27 @@ ut_scene_take_marks (const UtScene *scene, GArray *boxes)
   take_wall_figure (scene, boxes);
 }
 
+/* The place of tools that are worked by keys. */
+static void
+draw_cursor (const UtScene *scene, cairo_t *cr)
+{
+  double x, y;
+
+  if (!scene->cursor)
+    return;
+  ut_view_to_sheet (scene->view, scene->cursor_x_m, scene->cursor_y_m, &x, &y);
+  for (int halo = 1; halo >= 0; halo--)
+    {
+      ut_scene_colour (cr, halo ? &scene->palette->sheet : &scene->palette->ink, 1);
+      cairo_set_line_width (cr, halo ? 5 : 2);
+      cairo_move_to (cr, x - 14, y);
+      cairo_line_to (cr, x + 14, y);
+      cairo_move_to (cr, x, y - 14);
+      cairo_line_to (cr, x, y + 14);
+      cairo_stroke (cr);
+    }
+}
+
 void
 ut_scene_draw_marks (const UtScene *scene, cairo_t *cr)
 {
@@ -417,4 +438,5 @@ ut_scene_draw_marks (const UtScene *scene, cairo_t *cr)
   draw_opening_in_progress (scene, cr);
   draw_measure (scene, cr);
   draw_backdrop_work (scene, cr);
+  draw_cursor (scene, cr);
 }

@@ -25,13 +25,13 @@ pointer_at (UtSheet *self, double x_px, double y_px, GdkModifierType state)
 }
 
 static void
-place_at (UtSheet *self, UtRadioKind kind, double x_px, double y_px)
+place_at (UtSheet *self, const UtPreset *preset, double x_px, double y_px)
 {
   const UtPlan *plan = ut_desk_plan (self->desk);
   double x_m, y_m, step_m = ut_snap_step_m (self->view.scale_px_m);
 
   ut_view_to_plan (&self->view, x_px, y_px, &x_m, &y_m);
-  ut_desk_place (self->desk, kind, ut_plan_storey (plan, ut_sheet_storey (self))->id, round (x_m / step_m) * step_m, round (y_m / step_m) * step_m);
+  ut_desk_place_preset (self->desk, preset, ut_plan_storey (plan, ut_sheet_storey (self))->id, round (x_m / step_m) * step_m, round (y_m / step_m) * step_m);
 }
 
 static void
@@ -67,7 +67,7 @@ released_cb (GtkGestureClick *gesture, int n_press, double x_px, double y_px, Ut
     }
   else if (self->tool == UT_TOOL_CELL || self->tool == UT_TOOL_TERMINAL)
     {
-      place_at (self, self->tool == UT_TOOL_CELL ? UT_KIND_CELL : UT_KIND_TERMINAL, x_px, y_px);
+      place_at (self, ut_presets_get (ut_presets_get_default (), self->tool == UT_TOOL_CELL ? 0 : 1), x_px, y_px);
       ut_sheet_set_tool (self, UT_TOOL_SELECT);
     }
 }
@@ -250,9 +250,13 @@ pan_update_cb (GtkGestureDrag *gesture, double dx_px, double dy_px, UtSheet *sel
 static void
 motion_cb (GtkEventControllerMotion *controller, double x_px, double y_px, UtSheet *self)
 {
+  self->pointer_inside = TRUE;
+  /* What has not moved is no motion: the keyboard's cursor stays. */
+  if (fabs (x_px - self->pointer_x_px) < 1 && fabs (y_px - self->pointer_y_px) < 1)
+    return;
   self->pointer_x_px = x_px;
   self->pointer_y_px = y_px;
-  self->pointer_inside = TRUE;
+  self->cursor = FALSE;
   if (self->desk != NULL && self->tool == UT_TOOL_WALL)
     {
       UtPointer pointer = pointer_at (self, x_px, y_px, gtk_event_controller_get_current_event_state (GTK_EVENT_CONTROLLER (controller)));
@@ -336,6 +340,98 @@ pinch_cb (GtkGestureZoom *gesture, double scale, UtSheet *self)
   ut_sheet_zoom_about (self, self->pinch_scale * scale / self->view.scale_px_m, x_px, y_px);
 }
 
+/* ---- tools without a pointer ---- */
+
+static UtPointer
+pointer_at_cursor (UtSheet *self)
+{
+  return (UtPointer){ .x_m = self->cursor_x_m, .y_m = self->cursor_y_m, .px_per_m = self->view.scale_px_m, .storey = ut_sheet_storey (self) };
+}
+
+static void
+show_at_cursor (UtSheet *self)
+{
+  UtPointer pointer = pointer_at_cursor (self);
+
+  if (self->tool == UT_TOOL_WALL)
+    ut_wall_draw_hover (&self->wall, self->desk, &pointer);
+  else if (self->tool == UT_TOOL_OPENING)
+    ut_opening_draw_update (&self->opening, self->desk, &pointer);
+  else if (self->tool == UT_TOOL_MEASURE && self->cursor_begun)
+    ut_measure_update (&self->measure, self->desk, &pointer);
+  else if (self->tool == UT_TOOL_BACKDROP)
+    ut_backdrop_work_hover (&self->backdrop, self->desk, &pointer);
+  ut_sheet_describe (self);
+  gtk_widget_queue_draw (GTK_WIDGET (self));
+}
+
+/* It begins in the middle of what is seen, on the grid, and pulls the view along. */
+void
+ut_sheet_move_cursor (UtSheet *self, double dx_m, double dy_m)
+{
+  double x_px, y_px, edge_px = 24;
+
+  if (!self->cursor)
+    {
+      ut_view_to_plan (&self->view, self->view.width_px / 2, self->view.height_px / 2, &self->cursor_x_m, &self->cursor_y_m);
+      self->cursor_x_m = round (self->cursor_x_m * 2) / 2;
+      self->cursor_y_m = round (self->cursor_y_m * 2) / 2;
+      self->cursor = TRUE;
+    }
+  else
+    {
+      self->cursor_x_m = round ((self->cursor_x_m + dx_m) * 1000) / 1000;
+      self->cursor_y_m = round ((self->cursor_y_m + dy_m) * 1000) / 1000;
+    }
+  ut_view_to_sheet (&self->view, self->cursor_x_m, self->cursor_y_m, &x_px, &y_px);
+  if (x_px < edge_px || y_px < edge_px || x_px > self->view.width_px - edge_px || y_px > self->view.height_px - edge_px)
+    {
+      self->fitted = FALSE;
+      ut_view_pan (&self->view, self->view.width_px / 2 - x_px, self->view.height_px / 2 - y_px);
+      ut_sheet_show_view (self);
+    }
+  show_at_cursor (self);
+}
+
+void
+ut_sheet_click_cursor (UtSheet *self)
+{
+  UtPointer pointer = pointer_at_cursor (self);
+
+  switch (self->tool)
+    {
+    case UT_TOOL_WALL:
+      ut_wall_draw_click (&self->wall, self->desk, &pointer, FALSE);
+      break;
+    case UT_TOOL_OPENING:
+      if (self->opening.active)
+        ut_opening_draw_end (&self->opening, self->desk);
+      else
+        ut_opening_draw_begin (&self->opening, self->desk, &pointer);
+      break;
+    case UT_TOOL_MEASURE:
+      if (!self->cursor_begun)
+        ut_measure_begin (&self->measure, self->desk, &pointer);
+      self->cursor_begun = !self->cursor_begun;
+      break;
+    case UT_TOOL_BACKDROP:
+      ut_backdrop_work_click (&self->backdrop, self->desk, &pointer);
+      break;
+    case UT_TOOL_CELL:
+    case UT_TOOL_TERMINAL:
+      ut_desk_place_preset (self->desk,
+                            ut_presets_get (ut_presets_get_default (), self->tool == UT_TOOL_CELL ? 0 : 1),
+                            ut_plan_storey (ut_desk_plan (self->desk), pointer.storey)->id,
+                            pointer.x_m,
+                            pointer.y_m);
+      break;
+    case UT_TOOL_SELECT:
+    case UT_N_TOOLS:
+      break;
+    }
+  show_at_cursor (self);
+}
+
 /* Keys of the wall tool: a length, Enter, Escape. */
 static gboolean
 wall_key (UtSheet *self, guint key, GdkModifierType state)
@@ -347,6 +443,13 @@ wall_key (UtSheet *self, guint key, GdkModifierType state)
     case GDK_KEY_Return:
     case GDK_KEY_KP_Enter:
       ut_wall_draw_enter (&self->wall, self->desk);
+      if (self->cursor && self->wall.points != NULL && self->wall.points->len > 0)
+        {
+          UtPoint last = g_array_index (self->wall.points, UtPoint, self->wall.points->len - 1);
+
+          self->cursor_x_m = last.x_m;
+          self->cursor_y_m = last.y_m;
+        }
       return TRUE;
     case GDK_KEY_Escape:
       return ut_wall_draw_back (&self->wall);
@@ -397,6 +500,11 @@ key_cb (GtkEventControllerKey *controller, guint key, guint code, GdkModifierTyp
       gtk_widget_queue_draw (GTK_WIDGET (self));
       return GDK_EVENT_STOP;
     }
+  if (key == GDK_KEY_space && self->cursor && self->desk != NULL && self->tool != UT_TOOL_SELECT && (state & (GDK_CONTROL_MASK | GDK_ALT_MASK)) == 0)
+    {
+      ut_sheet_click_cursor (self);
+      return GDK_EVENT_STOP;
+    }
   if (key == GDK_KEY_space && (state & (GDK_CONTROL_MASK | GDK_ALT_MASK)) == 0)
     {
       self->space_held = TRUE;
@@ -431,7 +539,9 @@ drop_cb (GtkDropTarget *target, const GValue *value, double x_px, double y_px, U
   (void) target;
   if (self->desk == NULL || !G_VALUE_HOLDS (value, UT_TYPE_TRAY_ITEM))
     return FALSE;
-  place_at (self, (UtRadioKind) g_value_get_enum (value), x_px, y_px);
+  if ((guint) g_value_get_enum (value) >= ut_presets_count (ut_presets_get_default ()))
+    return FALSE;
+  place_at (self, ut_presets_get (ut_presets_get_default (), (guint) g_value_get_enum (value)), x_px, y_px);
   gtk_widget_grab_focus (GTK_WIDGET (self));
   return TRUE;
 }

@@ -25,6 +25,9 @@ struct _UtSheet
   gboolean panning, space_held, pointer_inside, ghost;
   guint repeats; /* clicks on one place */
   double pinch_scale;
+  gboolean cursor_begun;       /* a measure by keys */
+  gboolean cursor;             /* a place for tools without a pointer is shown */
+  double cursor_x_m, cursor_y_m;
   double menu_x_px, menu_y_px; /* where the menu was asked for */
   GtkWidget *menu; /* popover of what can be done here; NULL: none was set */
 };
@@ -38,6 +41,8 @@ void ut_sheet_describe (UtSheet *sheet);
 void ut_sheet_show_view (UtSheet *sheet);
 void ut_sheet_zoom_about (UtSheet *sheet, double factor, double x_px, double y_px);
 
-/* Of sheet-gestures.c. */
+/* Of sheet-gestures.c.  The keyboard's cursor moves, or does what a click there would. */
+void ut_sheet_move_cursor (UtSheet *sheet, double dx_m, double dy_m);
+void ut_sheet_click_cursor (UtSheet *sheet);
 void ut_sheet_add_gestures (UtSheet *sheet);
 void ut_sheet_menu_cb (GtkWidget *widget, const char *name, GVariant *parameter);

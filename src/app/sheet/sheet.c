@@ -46,6 +46,12 @@ ut_sheet_describe (UtSheet *self)
       g_autofree char *x = ut_report_figure (radio->x_m, 2), *y = ut_report_figure (radio->y_m, 2);
       g_string_append_printf (text, _ ("; %s selected at %s, %s m"), radio->id, x, y);
     }
+  if (self->cursor && self->tool != UT_TOOL_SELECT)
+    {
+      g_autofree char *x = ut_report_figure (self->cursor_x_m, 2), *y = ut_report_figure (self->cursor_y_m, 2);
+
+      g_string_append_printf (text, _ ("; cursor at %s, %s m"), x, y);
+    }
   if (self->tool == UT_TOOL_MEASURE)
     {
       g_autofree char *measured = ut_measure_text (&self->measure, self->desk);
@@ -188,6 +194,9 @@ ut_sheet_snapshot (GtkWidget *widget, GtkSnapshot *snapshot)
     .measure = self->tool == UT_TOOL_MEASURE ? &self->measure : NULL,
     .backdrop = self->tool == UT_TOOL_BACKDROP ? &self->backdrop : NULL,
     .ghost = self->ghost,
+    .cursor = self->cursor && self->tool != UT_TOOL_SELECT,
+    .cursor_x_m = self->cursor_x_m,
+    .cursor_y_m = self->cursor_y_m,
     .focused = gtk_widget_has_visible_focus (widget),
     .device_scale = gtk_widget_get_scale_factor (widget),
   };
@@ -209,8 +218,10 @@ nudge_cb (GtkWidget *widget, const char *name, GVariant *parameter)
 
   (void) name;
   g_variant_get (parameter, "(dd)", &dx, &dy);
-  if (self->desk != NULL)
+  if (self->desk != NULL && self->tool == UT_TOOL_SELECT)
     ut_desk_nudge_selected (self->desk, dx, dy);
+  else if (self->desk != NULL)
+    ut_sheet_move_cursor (self, dx, dy);
 }
 
 /* Tab walks through the radios of the storey, cells first. */
@@ -290,6 +301,13 @@ ut_sheet_class_init (UtSheetClass *class)
   gtk_widget_class_install_action (widget_class, "sheet.menu", NULL, ut_sheet_menu_cb);
   gtk_widget_class_add_binding_action (widget_class, GDK_KEY_Menu, 0, "sheet.menu", NULL);
   gtk_widget_class_add_binding_action (widget_class, GDK_KEY_F10, GDK_SHIFT_MASK, "sheet.menu", NULL);
+  static const struct
+  {
+    guint key;
+    const char *tool;
+  } tools[] = { { GDK_KEY_s, "select" }, { GDK_KEY_w, "wall" }, { GDK_KEY_o, "opening" }, { GDK_KEY_c, "cell" }, { GDK_KEY_t, "terminal" }, { GDK_KEY_m, "measure" }, { GDK_KEY_b, "backdrop" } };
+  for (gsize i = 0; i < G_N_ELEMENTS (tools); i++)
+    gtk_widget_class_add_binding_action (widget_class, tools[i].key, 0, "win.tool", "s", tools[i].tool);
   bind_arrows (widget_class, GDK_KEY_Left, GDK_KEY_KP_Left, -1, 0);
   bind_arrows (widget_class, GDK_KEY_Right, GDK_KEY_KP_Right, 1, 0);
   bind_arrows (widget_class, GDK_KEY_Up, GDK_KEY_KP_Up, 0, 1);
@@ -341,6 +359,7 @@ ut_sheet_set_tool (UtSheet *self, UtToolKind tool)
   if (self->tool == tool)
     return;
   self->tool = tool;
+  self->cursor_begun = FALSE;
   ut_wall_draw_clear (&self->wall);
   ut_backdrop_work_clear (&self->backdrop);
   self->backdrop.storey = ut_sheet_storey (self);
