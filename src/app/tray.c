@@ -77,7 +77,8 @@ fill (GtkBox *box, UtPresets *presets)
 
       tooltip = tip (preset);
       gtk_label_set_ellipsize (GTK_LABEL (label), PANGO_ELLIPSIZE_END);
-      gtk_label_set_max_width_chars (GTK_LABEL (label), 11);
+      gtk_label_set_width_chars (GTK_LABEL (label), 12);
+      gtk_label_set_max_width_chars (GTK_LABEL (label), 12);
       gtk_label_set_xalign (GTK_LABEL (label), 0);
       gtk_widget_set_tooltip_text (label, tooltip);
       gtk_widget_add_css_class (label, "tray-item");
