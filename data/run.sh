@@ -10,7 +10,7 @@ build build
 
 example=data/examples/cold-store.undertone
 if [ -n "${WAYLAND_DISPLAY:-}${DISPLAY:-}" ]; then
-  exec build/undertone "$example"
+  UNDERTONE_LOCALE_FOLDER="$PWD/build/po" exec build/undertone "$example"
 fi
 
 page=build/example-page.pdf

@@ -8,8 +8,11 @@
 int
 main (int argc, char **argv)
 {
+  /* Translations of a program that is not installed lie elsewhere. */
+  const char *folder = g_getenv ("UNDERTONE_LOCALE_FOLDER");
+
   setlocale (LC_ALL, "");
-  bindtextdomain (UT_GETTEXT_DOMAIN, UT_LOCALE_FOLDER);
+  bindtextdomain (UT_GETTEXT_DOMAIN, folder != NULL ? folder : UT_LOCALE_FOLDER);
   bind_textdomain_codeset (UT_GETTEXT_DOMAIN, "UTF-8");
   textdomain (UT_GETTEXT_DOMAIN);
 

@@ -1,5 +1,7 @@
 #include "palette.h"
 
+#include <glib/gi18n-lib.h>
+
 #include <math.h>
 
 #define RGB(hex) { ((hex) >> 16 & 255) / 255.0, ((hex) >> 8 & 255) / 255.0, ((hex) & 255) / 255.0 }
@@ -64,12 +66,12 @@ const char *
 ut_margin_words (UtMarginClass margin)
 {
   static const char *const words[] = {
-    [UT_MARGIN_FAR_SHORT] = "short by over 3 dB",
-    [UT_MARGIN_SHORT] = "short",
-    [UT_MARGIN_TIGHT] = "met, under 3 dB to spare",
-    [UT_MARGIN_EASY] = "met, more to spare",
-    [UT_MARGIN_UNKNOWN] = "no cell",
+    [UT_MARGIN_FAR_SHORT] = N_ ("short by over 3 dB"),
+    [UT_MARGIN_SHORT] = N_ ("short"),
+    [UT_MARGIN_TIGHT] = N_ ("met, under 3 dB to spare"),
+    [UT_MARGIN_EASY] = N_ ("met, more to spare"),
+    [UT_MARGIN_UNKNOWN] = N_ ("no cell"),
   };
 
-  return words[margin];
+  return _ (words[margin]);
 }

@@ -2,8 +2,9 @@
 
 #include <math.h>
 
+#include <glib/gi18n-lib.h>
+
 #include "decibel.h"
-#include "words.h"
 
 char *
 ut_report_figure (double value, int decimals)
@@ -29,11 +30,11 @@ name_terminals (const UtStudy *study, const GArray *terminals)
   for (guint i = 0; i < shown; i++)
     {
       if (i > 0)
-        g_string_append (names, i + 1 == terminals->len ? " and " : ", ");
+        g_string_append (names, i + 1 == terminals->len ? _ (" and ") : ", ");
       g_string_append (names, ut_plan_terminal (plan, g_array_index (terminals, guint, i))->radio.id);
     }
   if (shown < terminals->len)
-    g_string_append_printf (names, " and %u more", terminals->len - shown);
+    g_string_append_printf (names, _ (" and %u more"), terminals->len - shown);
   return g_string_free (names, FALSE);
 }
 
@@ -56,14 +57,22 @@ saved_db (const UtStudy *study)
   return chosen_mw > 0 && set_mw > 0 ? ut_db_from_ratio (set_mw / chosen_mw) : NAN;
 }
 
+/* "the one target", within a sentence. */
+static char *
+all_targets (guint n)
+{
+  return n == 1 ? g_strdup (_ ("the one target")) : n == 2 ? g_strdup (_ ("both targets")) : g_strdup_printf (_ ("all %u targets"), n);
+}
+
 /* As set: who falls short, and that other powers would heal it. */
 static char *
-as_set_sentence (const UtStudy *study, const char *all, const char *headroom)
+as_set_sentence (const UtStudy *study, const char *headroom)
 {
   g_autoptr (GArray) failing = g_array_new (FALSE, FALSE, sizeof (guint));
   double worst_db = 0;
+  guint n = study->links->len;
 
-  for (guint i = 0; i < study->links->len; i++)
+  for (guint i = 0; i < n; i++)
     {
       const UtLinkAnswer *link = ut_study_link (study, i);
 
@@ -72,20 +81,20 @@ as_set_sentence (const UtStudy *study, const char *all, const char *headroom)
       g_array_append_val (failing, link->terminal);
       worst_db = fmin (worst_db, link->margin_db);
     }
+  if (failing->len == 0 && n == 1)
+    return g_strdup_printf (_ ("The one target is met as set; with powers that suit there would be %s dB to spare."), headroom);
+  if (failing->len == 0 && n == 2)
+    return g_strdup_printf (_ ("Both targets are met as set; with powers that suit there would be %s dB to spare."), headroom);
   if (failing->len == 0)
-    return g_strdup_printf ("%s %s met as set; with powers that suit there would be %s dB to spare.",
-                            all,
-                            study->links->len == 1 ? "is" : "are",
-                            headroom);
+    return g_strdup_printf (_ ("All %u targets are met as set; with powers that suit there would be %s dB to spare."), n, headroom);
   g_autofree char *names = name_terminals (study, failing);
   g_autofree char *short_by = ut_report_figure (-worst_db, 1);
-  g_autofree char *all_small = g_strdup_printf ("%c%s", g_ascii_tolower (all[0]), all + 1);
-  return g_strdup_printf ("As set %s fall%s short, %s%s dB; with powers that suit %s can be met, with %s dB to spare.",
+  g_autofree char *all = all_targets (n);
+  return g_strdup_printf (failing->len == 1 ? _ ("As set %s falls short, by %s dB; with powers that suit %s can be met, with %s dB to spare.")
+                                            : _ ("As set %s fall short, the worst by %s dB; with powers that suit %s can be met, with %s dB to spare."),
                           names,
-                          failing->len == 1 ? "s" : "",
-                          failing->len == 1 ? "by " : "the worst by ",
                           short_by,
-                          all_small,
+                          all,
                           headroom);
 }
 
@@ -94,20 +103,25 @@ met_sentence (const UtStudy *study)
 {
   g_autofree char *headroom = ut_report_figure (study->headroom_db, 1);
   g_autofree char *saved = ut_report_figure (fabs (saved_db (study)), 1);
-  const char *more_or_less = saved_db (study) >= 0 ? "less" : "more";
-  g_autofree char *all = study->links->len == 1   ? g_strdup ("The one target")
-                         : study->links->len == 2 ? g_strdup ("Both targets")
-                                                  : g_strdup_printf ("All %u targets", study->links->len);
-  const char *rise = study->links->len == 1 ? "it" : "every one";
+  gboolean less = saved_db (study) >= 0;
+  guint n = study->links->len;
 
   if (study->question.aim == UT_AIM_AS_SET)
-    return as_set_sentence (study, all, headroom);
-  return g_strdup_printf ("%s %s met. The powers add up to %s dB %s than set; %s could rise by %s dB.",
-                          all,
-                          study->links->len == 1 ? "is" : "are",
+    return as_set_sentence (study, headroom);
+  if (n == 1)
+    return g_strdup_printf (less ? _ ("The one target is met. The powers add up to %s dB less than set; it could rise by %s dB.")
+                                 : _ ("The one target is met. The powers add up to %s dB more than set; it could rise by %s dB."),
+                            saved,
+                            headroom);
+  if (n == 2)
+    return g_strdup_printf (less ? _ ("Both targets are met. The powers add up to %s dB less than set; every one could rise by %s dB.")
+                                 : _ ("Both targets are met. The powers add up to %s dB more than set; every one could rise by %s dB."),
+                            saved,
+                            headroom);
+  return g_strdup_printf (less ? _ ("All %u targets are met. The powers add up to %s dB less than set; every one could rise by %s dB.")
+                               : _ ("All %u targets are met. The powers add up to %s dB more than set; every one could rise by %s dB."),
+                          n,
                           saved,
-                          more_or_less,
-                          rise,
                           headroom);
 }
 
@@ -125,11 +139,11 @@ alone_sentence (const UtStudy *study)
     else
       worst_db = fmax (worst_db, g_array_index (study->lacks_db, double, i));
   if (no_cell)
-    return g_strdup_printf ("Without a cell that is on to serve, or out of reach even at full power: %s.", names);
+    return g_strdup_printf (_ ("Without a cell that is on to serve, or out of reach even at full power: %s."), names);
   g_autofree char *lack = ut_report_figure (worst_db, 1);
   if (study->verdict == UT_VERDICT_LEVEL_LIMITED)
-    return g_strdup_printf ("The level asked for cannot be reached at full power: %s; the worst lacks %s dB.", names, lack);
-  return g_strdup_printf ("Out of reach even at full power with everyone else silent: %s; the worst lacks %s dB.", names, lack);
+    return g_strdup_printf (_ ("The level asked for cannot be reached at full power: %s; the worst lacks %s dB."), names, lack);
+  return g_strdup_printf (_ ("Out of reach even at full power with everyone else silent: %s; the worst lacks %s dB."), names, lack);
 }
 
 char *
@@ -137,13 +151,13 @@ ut_report_verdict_sentence (const UtStudy *study)
 {
   g_autofree char *lower = ut_report_figure (-study->headroom_db, 1);
   g_autofree char *heals = isnan (study->headroom_db)
-                             ? g_strdup ("No common change of the targets heals that.")
-                             : g_strdup_printf ("Lowering every target by %s dB would heal it.", lower);
+                             ? g_strdup (_ ("No common change of the targets heals that."))
+                             : g_strdup_printf (_ ("Lowering every target by %s dB would heal it."), lower);
   g_autofree char *group = name_terminals (study, study->limiting_group);
   guint n = study->links->len;
 
   if (n == 0)
-    return g_strdup_printf ("There is no %slink target to meet.", ut_direction_word (study->question.direction));
+    return g_strdup (study->question.direction == UT_DIRECTION_UP ? _ ("There is no uplink target to meet.") : _ ("There is no downlink target to meet."));
   switch (study->verdict)
     {
     case UT_VERDICT_MET:
@@ -152,19 +166,18 @@ ut_report_verdict_sentence (const UtStudy *study)
     case UT_VERDICT_LEVEL_LIMITED:
       return alone_sentence (study);
     case UT_VERDICT_INTERFERENCE_LIMITED:
-      return g_strdup_printf ("No powers whatever can meet all %u targets: %s hold each other back. %s",
+      return g_strdup_printf (_ ("No powers whatever can meet all %u targets: %s hold each other back. %s"),
                               n,
-                              study->limiting_group->len > 1 ? group : "the links",
+                              study->limiting_group->len > 1 ? group : _ ("the links"),
                               heals);
     case UT_VERDICT_POWER_LIMITED:
-      return g_strdup_printf ("The %u targets need more power than the limits allow. %s", n, heals);
+      return g_strdup_printf (_ ("The %u targets need more power than the limits allow. %s"), n, heals);
     case UT_VERDICT_MINIMUM_LIMITED:
-      return g_strdup_printf ("Only the lowest powers of the radios stand in the way of the %u targets: some cannot be turned down "
-                              "far enough. %s",
+      return g_strdup_printf (_ ("Only the lowest powers of the radios stand in the way of the %u targets: some cannot be turned down far enough. %s"),
                               n,
                               heals);
     case UT_VERDICT_STEP_LIMITED:
-      return g_strdup_printf ("Powers for all %u targets exist, but not on the radios' steps.", n);
+      return g_strdup_printf (_ ("Powers for all %u targets exist, but not on the radios' steps."), n);
     }
   g_return_val_if_reached (NULL);
 }
