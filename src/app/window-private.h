@@ -1,6 +1,7 @@
 /* What the parts of the window share: window.c (its widgets), window-files.c (opening, saving, closing), window-edits.c (clipboard, order, storeys), window-backdrop.c. */
 #pragma once
 
+#include "budget-panel.h"
 #include "details.h"
 #include "links-panel.h"
 #include "recovery.h"
@@ -16,6 +17,9 @@ struct _UtWindow
   UtSheet *sheet;
   UtLinksPanel *links;
   UtThingsPanel *things;
+  UtBudgetPanel *budget;
+  GtkStack *panels;
+  GtkPaned *bottom_paned;
   UtDetails *details;
   GtkLabel *title_label, *subtitle_label, *verdict_label, *hold_label;
   GtkBox *tray;

@@ -285,6 +285,22 @@ constructions_cb (GSimpleAction *action, GVariant *parameter, gpointer self)
 }
 
 static void
+present_cb (GSimpleAction *action, GVariant *parameter, gpointer self)
+{
+  (void) action;
+  (void) parameter;
+  ut_budget_panel_present (UT_WINDOW (self)->budget, self);
+}
+
+/* One of the panels under the sheet. */
+static void
+panel_cb (GSimpleAction *action, GVariant *word, gpointer self)
+{
+  (void) action;
+  gtk_stack_set_visible_child_name (UT_WINDOW (self)->panels, g_variant_get_string (word, NULL));
+}
+
+static void
 zoom_in_cb (GSimpleAction *action, GVariant *parameter, gpointer self)
 {
   (void) action;
@@ -360,6 +376,8 @@ static const GActionEntry actions[] = {
   { .name = "delete", .activate = delete_cb },
   { .name = "select-all", .activate = select_all_cb },
   { .name = "select", .activate = select_cb, .parameter_type = "s" },
+  { .name = "present", .activate = present_cb },
+  { .name = "panel", .activate = panel_cb, .parameter_type = "s" },
   { .name = "zoom-in", .activate = zoom_in_cb },
   { .name = "zoom-out", .activate = zoom_out_cb },
   { .name = "fit", .activate = fit_cb },
@@ -407,6 +425,19 @@ file_dropped_cb (GtkDropTarget *target, const GValue *value, double x, double y,
     if (!ut_window_take_picture (self, item->data))
       ut_window_open_file (UT_APPLICATION (gtk_window_get_application (GTK_WINDOW (self))), self, item->data);
   return files != NULL;
+}
+
+/* A plot needs more room than a table: the sheet gives some, where it has it. */
+#define PLOT_ROOM_PX 400
+
+static void
+panel_shown_cb (UtWindow *self)
+{
+  const char *name = gtk_stack_get_visible_child_name (self->panels);
+  int height = gtk_widget_get_height (GTK_WIDGET (self->bottom_paned)), most = height - MIN (PLOT_ROOM_PX, height / 2);
+
+  if (name != NULL && !g_str_equal (name, "links") && !g_str_equal (name, "things") && gtk_paned_get_position (self->bottom_paned) > most && most > 0)
+    gtk_paned_set_position (self->bottom_paned, most);
 }
 
 /* The wheel over a drop-down or slider belongs to what is scrolled, unless the widget has been clicked into. */
@@ -460,12 +491,16 @@ ut_window_class_init (UtWindowClass *class)
   g_type_ensure (UT_TYPE_SHEET);
   g_type_ensure (UT_TYPE_LINKS_PANEL);
   g_type_ensure (UT_TYPE_THINGS_PANEL);
+  g_type_ensure (UT_TYPE_BUDGET_PANEL);
   g_type_ensure (UT_TYPE_DETAILS);
   g_type_ensure (UT_TYPE_START_PAGE);
   gtk_widget_class_set_template_from_resource (widget_class, "/io/undertone/Undertone/window.ui");
   gtk_widget_class_bind_template_child (widget_class, UtWindow, sheet);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, links);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, things);
+  gtk_widget_class_bind_template_child (widget_class, UtWindow, budget);
+  gtk_widget_class_bind_template_child (widget_class, UtWindow, panels);
+  gtk_widget_class_bind_template_child (widget_class, UtWindow, bottom_paned);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, details);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, title_label);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, subtitle_label);
@@ -506,6 +541,7 @@ ut_window_init (UtWindow *self)
   ignore_wheel (GTK_WIDGET (self->aim_drop));
   ignore_wheel (GTK_WIDGET (self->storey_drop));
   ignore_wheel (GTK_WIDGET (self->hold_scale));
+  g_signal_connect_object (self->panels, "notify::visible-child", G_CALLBACK (panel_shown_cb), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (self->aim_drop, "notify::selected", G_CALLBACK (aim_chosen_cb), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (self->storey_drop, "notify::selected", G_CALLBACK (storey_chosen_cb), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (self->hold_adjustment, "value-changed", G_CALLBACK (hold_changed_cb), self, G_CONNECT_SWAPPED);
@@ -539,6 +575,7 @@ ut_window_set_document (UtWindow *self, UtDocument *document)
   ut_sheet_set_desk (self->sheet, desk);
   ut_links_panel_set_up (self->links, ut_desk_solving (desk), ut_desk_selection (desk));
   ut_things_panel_set_desk (self->things, desk);
+  ut_budget_panel_set_desk (self->budget, desk);
   ut_details_set_desk (self->details, desk);
   plan_changed_cb (self);
   selection_changed_cb (self);
