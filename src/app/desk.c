@@ -53,10 +53,14 @@ ut_desk_init (UtDesk *self)
   self->question = (UtQuestion){ .direction = UT_DIRECTION_DOWN, .aim = UT_AIM_LEAST_POWER };
 }
 
+/* While something is dragged only what moves with it: reserves and chances follow when it is put down. */
 static void
 ask (UtDesk *self)
 {
-  ut_solving_ask (self->solving, ut_desk_plan (self), &self->question);
+  UtQuestion question = self->question;
+
+  question.reserves = question.chances = self->draft == NULL;
+  ut_solving_ask (self->solving, ut_desk_plan (self), &question);
 }
 
 /* The plan shown became another: the answer is asked for first, so that whoever is told finds it there when it is quick. */

@@ -16,7 +16,6 @@ struct _UtWindow
   gboolean closing; /* the question about unsaved changes was answered */
   UtSheet *sheet;
   UtLinksPanel *links;
-  UtThingsPanel *things;
   UtBudgetPanel *budget;
   GtkStack *panels;
   GtkPaned *bottom_paned;

@@ -1,11 +1,16 @@
 #include "window-private.h"
 
 #include <math.h>
+#include <string.h>
 
 #include <glib/gi18n.h>
 
+#include "compare-panel.h"
 #include "compat.h"
 #include "constructions.h"
+#include "control-panel.h"
+#include "matrix-panel.h"
+#include "remedies-panel.h"
 #include "report.h"
 #include "tray.h"
 #include "words.h"
@@ -138,6 +143,52 @@ show_hold (UtWindow *self, const UtStudy *study)
   self->showing = FALSE;
 }
 
+/* Whether the answer is about this terminal: one that fails, limits or is left out. */
+static gboolean
+is_named (const UtStudy *study, const char *id)
+{
+  for (guint i = 0; i < study->links->len; i++)
+    {
+      const UtLinkAnswer *link = ut_study_link (study, i);
+      gboolean counts = link->dropped || !(link->margin_db >= UT_MARGIN_MET_DB);
+
+      for (guint k = 0; k < study->limiting_group->len && !counts; k++)
+        counts = g_array_index (study->limiting_group, guint, k) == link->terminal;
+      if (counts && g_str_equal (ut_plan_terminal (study->gains->plan, link->terminal)->radio.id, id))
+        return TRUE;
+    }
+  return FALSE;
+}
+
+/* The sentence with the terminals it names as links. Transfer full. */
+static char *
+verdict_markup (const UtStudy *study, const char *sentence)
+{
+  GString *markup = g_string_new (NULL);
+  const char *end;
+
+  for (const char *at = sentence; *at != '\0'; at = end)
+    {
+      gboolean word = strchr (" ,.;:", *at) == NULL;
+      g_autofree char *token = NULL, *escaped = NULL;
+
+      for (end = at + 1; *end != '\0' && (strchr (" ,.;:", *end) == NULL) == word; end++)
+        ;
+      token = g_strndup (at, (gsize) (end - at));
+      escaped = g_markup_escape_text (token, -1);
+      g_string_append_printf (markup, word && is_named (study, token) ? "<a href=\"%1$s\">%1$s</a>" : "%1$s", escaped);
+    }
+  return g_string_free (markup, FALSE);
+}
+
+static gboolean
+named_link_cb (GtkLabel *label, const char *id, UtWindow *self)
+{
+  (void) label;
+  ut_selection_set_one (ut_desk_selection (self->desk), UT_KIND_TERMINAL, id);
+  return TRUE;
+}
+
 static void
 answered_cb (UtWindow *self)
 {
@@ -150,10 +201,10 @@ answered_cb (UtWindow *self)
       gtk_accessible_update_state (GTK_ACCESSIBLE (self->verdict_label), GTK_ACCESSIBLE_STATE_BUSY, TRUE, -1);
       return;
     }
-  g_autofree char *sentence = ut_report_verdict_sentence (study);
+  g_autofree char *sentence = ut_report_verdict_sentence (study), *markup = verdict_markup (study, sentence);
   gtk_widget_remove_css_class (GTK_WIDGET (self->verdict_label), "stale");
   gtk_accessible_update_state (GTK_ACCESSIBLE (self->verdict_label), GTK_ACCESSIBLE_STATE_BUSY, FALSE, -1);
-  gtk_label_set_text (self->verdict_label, sentence);
+  gtk_label_set_markup (self->verdict_label, markup);
   show_hold (self, study);
 }
 
@@ -492,12 +543,15 @@ ut_window_class_init (UtWindowClass *class)
   g_type_ensure (UT_TYPE_LINKS_PANEL);
   g_type_ensure (UT_TYPE_THINGS_PANEL);
   g_type_ensure (UT_TYPE_BUDGET_PANEL);
+  g_type_ensure (UT_TYPE_MATRIX_PANEL);
+  g_type_ensure (UT_TYPE_CONTROL_PANEL);
+  g_type_ensure (UT_TYPE_COMPARE_PANEL);
+  g_type_ensure (UT_TYPE_REMEDIES_PANEL);
   g_type_ensure (UT_TYPE_DETAILS);
   g_type_ensure (UT_TYPE_START_PAGE);
   gtk_widget_class_set_template_from_resource (widget_class, "/io/undertone/Undertone/window.ui");
   gtk_widget_class_bind_template_child (widget_class, UtWindow, sheet);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, links);
-  gtk_widget_class_bind_template_child (widget_class, UtWindow, things);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, budget);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, panels);
   gtk_widget_class_bind_template_child (widget_class, UtWindow, bottom_paned);
@@ -541,6 +595,7 @@ ut_window_init (UtWindow *self)
   ignore_wheel (GTK_WIDGET (self->aim_drop));
   ignore_wheel (GTK_WIDGET (self->storey_drop));
   ignore_wheel (GTK_WIDGET (self->hold_scale));
+  g_signal_connect (self->verdict_label, "activate-link", G_CALLBACK (named_link_cb), self);
   g_signal_connect_object (self->panels, "notify::visible-child", G_CALLBACK (panel_shown_cb), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (self->aim_drop, "notify::selected", G_CALLBACK (aim_chosen_cb), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (self->storey_drop, "notify::selected", G_CALLBACK (storey_chosen_cb), self, G_CONNECT_SWAPPED);
@@ -574,8 +629,9 @@ ut_window_set_document (UtWindow *self, UtDocument *document)
   gtk_stack_set_visible_child_name (self->pages, "work");
   ut_sheet_set_desk (self->sheet, desk);
   ut_links_panel_set_up (self->links, ut_desk_solving (desk), ut_desk_selection (desk));
-  ut_things_panel_set_desk (self->things, desk);
-  ut_budget_panel_set_desk (self->budget, desk);
+  for (GtkWidget *panel = gtk_widget_get_first_child (GTK_WIDGET (self->panels)); panel != NULL; panel = gtk_widget_get_next_sibling (panel))
+    if (UT_IS_PANEL (panel))
+      ut_panel_set_desk (UT_PANEL (panel), desk);
   ut_details_set_desk (self->details, desk);
   plan_changed_cb (self);
   selection_changed_cb (self);

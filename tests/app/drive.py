@@ -137,6 +137,9 @@ def sentence(plan, *options):
 
 with tempfile.TemporaryDirectory() as folder:
     plan = pathlib.Path(folder) / "store.undertone"
+    # Nothing that another run left behind, and nothing of the user's.
+    for name in ("STATE", "CONFIG", "DATA"):
+        os.environ[f"XDG_{name}_HOME"] = str(pathlib.Path(folder) / name.lower())
     start = (examples / "cold-store.undertone").read_bytes()
     plan.write_bytes(start)
     app = App(plan)
@@ -166,6 +169,27 @@ with tempfile.TemporaryDirectory() as folder:
     app.act("aim", GLib.Variant("s", "least-power"))
     app.wait("least powers", lambda: app.verdict() == sentence(plan))
     tap.check("direction and aim change the answer as on the command line", [])
+
+    # The panels, in words: who drowns T4, what would help; each is drawn without a complaint.
+    app.act("select", GLib.Variant("s", "terminal T4"))
+    faults = []
+    for panel, words in (("budget", "As set, T4 hears its cell C1"), ("matrix", "coupling losses"), ("control", "After 60 rounds"), ("things", "Cell C1"), ("remedies", "All targets can be met")):
+        app.act("panel", GLib.Variant("s", panel))
+        app.wait(f"the panel {panel}", lambda words=words: next((n for n in app.walk() if words in n.get_name()), None))
+    button = app.find("push button", "What would give more?") or app.find("button", "What would give more?")
+    app.xdo("mousemove", *app.middle_of(button), "click", 1)
+    change = app.wait("changes that help", lambda: next((n for n in app.walk() if "headroom" in n.get_name() and "dB more" in n.get_name()), None)).get_name()
+    apply_button = app.find("push button", "Apply") or app.find("button", "Apply")
+    app.xdo("mousemove", *app.middle_of(apply_button))
+    time.sleep(0.2)
+    app.xdo("click", 1)
+    app.wait("the change", lambda: app.verdict() != sentence(plan))
+    found = re.search(r"headroom (-?[0-9.]+) dB", change).group(1)
+    faults += same("headroom as told", f"rise by {found} dB" in app.verdict(), True)
+    app.act("undo")
+    app.wait("the start", lambda: app.verdict() == sentence(plan))
+    app.act("panel", GLib.Variant("s", "links"))
+    tap.check("panels tell why and what would help; a change is applied and undone", faults)
 
     # Drag a cell: the answer follows, and what is saved gives the same on the command line.
     before = app.verdict()
@@ -299,7 +323,7 @@ with tempfile.TemporaryDirectory() as folder:
     # Box select, duplicate, copy and paste with the keys.
     app.act("fit")
     n_terminals = len(saved()["terminals"])
-    app.drag(app.on_sheet(6, 1), app.on_sheet(30, 13), 10)
+    app.drag(app.on_sheet(6, 2.5), app.on_sheet(30, 13), 10)
     app.wait("what is in the box", lambda: "T" in app.description().split("terminals")[1].split(".")[0] and "selected" in app.description())
     app.xdo("key", "ctrl+d")
     app.wait("the duplicates", lambda: len(saved()["terminals"]) > n_terminals)
@@ -334,7 +358,6 @@ with tempfile.TemporaryDirectory() as folder:
     tap.check("ends with 0 and without a complaint", same("exit", code, 0) + noise)
 
     # Killed in the middle of work: what was unsaved is there again, and Undo leads back to the file.
-    os.environ["XDG_STATE_HOME"] = str(pathlib.Path(folder) / "state")
     app = App(plan)
     app.wait("the answer", lambda: "14 targets" in app.description())
     app.act("select", GLib.Variant("s", "cell C3"))

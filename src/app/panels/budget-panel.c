@@ -11,11 +11,10 @@
 
 struct _UtBudgetPanel
 {
-  GtkWidget parent;
+  UtPanel parent;
   GtkWidget *box;
   UtPlot *plot;
   GtkLabel *words;
-  UtDesk *desk;
   GCancellable *computing; /* NULL: nothing is */
   UtStudy *asked;          /* whose cases are there or being made */
   UtBudgetCases cases;
@@ -23,7 +22,7 @@ struct _UtBudgetPanel
   UtBudget *budget;
 };
 
-G_DEFINE_FINAL_TYPE (UtBudgetPanel, ut_budget_panel, GTK_TYPE_WIDGET)
+G_DEFINE_FINAL_TYPE (UtBudgetPanel, ut_budget_panel, UT_TYPE_PANEL)
 
 static void
 paint (cairo_t *cr, double width, double height, double text_size, const UtPalette *palette, gpointer data)
@@ -47,15 +46,12 @@ csv (gpointer data)
 static int
 shown_link (UtBudgetPanel *self, UtStudy *study)
 {
-  UtSelection *selection = ut_desk_selection (self->desk);
-  int worst = -1;
+  int worst = ut_panel_selected_link (UT_PANEL (self), study);
 
-  for (guint i = 0; i < study->links->len; i++)
+  for (guint i = 0; i < study->links->len && ut_panel_selected_link (UT_PANEL (self), study) < 0; i++)
     {
       const UtLinkAnswer *link = ut_study_link (study, i);
 
-      if (ut_selection_has (selection, UT_KIND_TERMINAL, ut_plan_terminal (study->gains->plan, link->terminal)->radio.id))
-        return (int) i;
       if (link->cell >= 0 && !isnan (link->margin_db) && (worst < 0 || link->margin_db < ut_study_link (study, (guint) worst)->margin_db))
         worst = (int) i;
     }
@@ -116,7 +112,7 @@ made_cb (GObject *source, GAsyncResult *result, gpointer data)
   if (g_task_get_cancellable (G_TASK (result)) != self->computing)
     return;
   g_clear_object (&self->computing);
-  if (!job->made || self->desk == NULL)
+  if (!job->made || ut_panel_desk (UT_PANEL (self)) == NULL)
     return;
   if (self->has_cases)
     ut_budget_cases_clear (&self->cases);
@@ -127,8 +123,10 @@ made_cb (GObject *source, GAsyncResult *result, gpointer data)
 }
 
 static void
-forget (UtBudgetPanel *self)
+ut_budget_panel_let_go (UtPanel *panel)
 {
+  UtBudgetPanel *self = UT_BUDGET_PANEL (panel);
+
   if (self->computing != NULL)
     g_cancellable_cancel (self->computing);
   g_clear_object (&self->computing);
@@ -136,13 +134,14 @@ forget (UtBudgetPanel *self)
 }
 
 static void
-refresh (UtBudgetPanel *self)
+ut_budget_panel_refresh (UtPanel *panel)
 {
-  UtStudy *study = self->desk != NULL ? ut_desk_answer (self->desk) : NULL;
+  UtBudgetPanel *self = UT_BUDGET_PANEL (panel);
+  UtStudy *study = ut_desk_answer (ut_panel_desk (panel));
   g_autoptr (GTask) task = NULL;
   Job *job;
 
-  if (study == NULL || !gtk_widget_get_mapped (GTK_WIDGET (self)))
+  if (study == NULL)
     return;
   if (study == self->asked)
     {
@@ -150,7 +149,7 @@ refresh (UtBudgetPanel *self)
         show (self);
       return;
     }
-  forget (self);
+  ut_budget_panel_let_go (panel);
   self->asked = ut_study_ref (study);
   self->computing = g_cancellable_new ();
   job = g_new0 (Job, 1);
@@ -158,30 +157,6 @@ refresh (UtBudgetPanel *self)
   task = g_task_new (self, self->computing, made_cb, NULL);
   g_task_set_task_data (task, job, job_free);
   g_task_run_in_thread (task, make_in_thread);
-}
-
-static void
-ut_budget_panel_map (GtkWidget *widget)
-{
-  GTK_WIDGET_CLASS (ut_budget_panel_parent_class)->map (widget);
-  refresh (UT_BUDGET_PANEL (widget));
-}
-
-void
-ut_budget_panel_set_desk (UtBudgetPanel *self, UtDesk *desk)
-{
-  if (self->desk != NULL)
-    {
-      g_signal_handlers_disconnect_by_func (ut_desk_solving (self->desk), refresh, self);
-      g_signal_handlers_disconnect_by_func (ut_desk_selection (self->desk), refresh, self);
-    }
-  forget (self);
-  g_set_object (&self->desk, desk);
-  if (desk == NULL)
-    return;
-  g_signal_connect_object (ut_desk_solving (desk), "answered", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
-  g_signal_connect_object (ut_desk_selection (desk), "changed", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
-  refresh (self);
 }
 
 /* ---- large type ---- */
@@ -215,7 +190,7 @@ ut_budget_panel_present (UtBudgetPanel *self, GtkWindow *parent)
                                         gtk_shortcut_new (gtk_alternative_trigger_new (gtk_keyval_trigger_new (GDK_KEY_Escape, 0), gtk_keyval_trigger_new (GDK_KEY_F5, 0)),
                                                           gtk_callback_action_new (close_cb, window, NULL)));
   gtk_widget_add_controller (window, keys);
-  ut_budget_panel_set_desk (large, self->desk);
+  ut_panel_set_desk (UT_PANEL (large), ut_panel_desk (UT_PANEL (self)));
   gtk_window_fullscreen (GTK_WINDOW (window));
   gtk_window_present (GTK_WINDOW (window));
 }
@@ -225,22 +200,19 @@ ut_budget_panel_dispose (GObject *object)
 {
   UtBudgetPanel *self = UT_BUDGET_PANEL (object);
 
-  ut_budget_panel_set_desk (self, NULL);
-  g_clear_pointer (&self->box, gtk_widget_unparent);
+  G_OBJECT_CLASS (ut_budget_panel_parent_class)->dispose (object);
   g_clear_pointer (&self->budget, ut_budget_free);
   if (self->has_cases)
     ut_budget_cases_clear (&self->cases);
   self->has_cases = FALSE;
-  G_OBJECT_CLASS (ut_budget_panel_parent_class)->dispose (object);
 }
 
 static void
 ut_budget_panel_class_init (UtBudgetPanelClass *class)
 {
   G_OBJECT_CLASS (class)->dispose = ut_budget_panel_dispose;
-  GTK_WIDGET_CLASS (class)->map = ut_budget_panel_map;
-  gtk_widget_class_set_layout_manager_type (GTK_WIDGET_CLASS (class), GTK_TYPE_BIN_LAYOUT);
-  gtk_widget_class_set_accessible_role (GTK_WIDGET_CLASS (class), GTK_ACCESSIBLE_ROLE_GROUP);
+  UT_PANEL_CLASS (class)->refresh = ut_budget_panel_refresh;
+  UT_PANEL_CLASS (class)->let_go = ut_budget_panel_let_go;
 }
 
 static void
@@ -264,5 +236,5 @@ ut_budget_panel_init (UtBudgetPanel *self)
   gtk_widget_set_size_request (scroller, 230, -1);
   gtk_box_append (GTK_BOX (self->box), GTK_WIDGET (self->plot));
   gtk_box_append (GTK_BOX (self->box), scroller);
-  gtk_widget_set_parent (self->box, GTK_WIDGET (self));
+  ut_panel_set_child (UT_PANEL (self), self->box);
 }

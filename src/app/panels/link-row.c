@@ -11,6 +11,7 @@ struct _UtLinkRow
   GObject parent;
   char *texts[UT_N_COLUMNS];
   double figures[UT_N_COLUMNS];
+  gboolean failing, limiting;
 };
 
 G_DEFINE_FINAL_TYPE (UtLinkRow, ut_link_row, G_TYPE_OBJECT)
@@ -29,7 +30,8 @@ static const Column columns[] = {
   [UT_COLUMN_CELL] = { N_ ("Cell"), -1 },          [UT_COLUMN_POWER] = { N_ ("Power dBm"), 2 },
   [UT_COLUMN_TARGET] = { N_ ("Target dB"), 1 },    [UT_COLUMN_SINR] = { N_ ("SINR dB"), 2 },
   [UT_COLUMN_MARGIN] = { N_ ("Margin dB"), 2 },    [UT_COLUMN_SIGNAL] = { N_ ("Signal dBm"), 1 },
-  [UT_COLUMN_INTERFERENCE] = { N_ ("Interference dBm"), 1 }, [UT_COLUMN_LIMIT] = { N_ ("Limit"), -1 },
+  [UT_COLUMN_INTERFERENCE] = { N_ ("Interference dBm"), 1 }, [UT_COLUMN_RESERVE] = { N_ ("Reserve dB"), 2 },
+  [UT_COLUMN_CHANCE] = { N_ ("Probability %"), 1 }, [UT_COLUMN_LIMIT] = { N_ ("Limit"), -1 },
 };
 
 static void
@@ -96,6 +98,12 @@ ut_link_row_set (UtLinkRow *self, UtStudy *study, guint index)
   self->figures[UT_COLUMN_MARGIN] = link->margin_db;
   self->figures[UT_COLUMN_SIGNAL] = link->signal_dbm;
   self->figures[UT_COLUMN_INTERFERENCE] = link->interference_dbm;
+  self->figures[UT_COLUMN_RESERVE] = link->reserve_db;
+  self->figures[UT_COLUMN_CHANCE] = 100 * link->chance;
+  self->failing = !(link->margin_db >= UT_MARGIN_MET_DB);
+  self->limiting = FALSE;
+  for (guint i = 0; i < study->limiting_group->len; i++)
+    self->limiting = self->limiting || g_array_index (study->limiting_group, guint, i) == link->terminal;
   texts[UT_COLUMN_TERMINAL] = g_strdup (terminal->id);
   texts[UT_COLUMN_NAME] = g_strdup (terminal->name);
   texts[UT_COLUMN_CELL] = g_strdup (link->cell < 0 ? "–" : ut_plan_cell (plan, (guint) link->cell)->radio.id);
@@ -128,6 +136,24 @@ double
 ut_link_row_figure (UtLinkRow *self, UtLinkColumn column)
 {
   return self->figures[column];
+}
+
+gboolean
+ut_link_row_passes (UtLinkRow *self, UtLinkShow show)
+{
+  switch (show)
+    {
+    case UT_SHOW_FAILING:
+      return self->failing;
+    case UT_SHOW_AT_LIMIT:
+      return self->texts[UT_COLUMN_LIMIT][0] != '\0';
+    case UT_SHOW_LIMITING:
+      return self->limiting;
+    case UT_SHOW_ALL:
+    case UT_N_SHOWS:
+      break;
+    }
+  return TRUE;
 }
 
 const char *

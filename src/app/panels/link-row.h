@@ -17,10 +17,15 @@ typedef enum
   UT_COLUMN_MARGIN,
   UT_COLUMN_SIGNAL,
   UT_COLUMN_INTERFERENCE,
+  UT_COLUMN_RESERVE,
+  UT_COLUMN_CHANCE,
   UT_COLUMN_LIMIT,
   UT_COLUMN_NAME,
   UT_N_COLUMNS
 } UtLinkColumn;
+
+/* Which links the table shows. */
+typedef enum { UT_SHOW_ALL, UT_SHOW_FAILING, UT_SHOW_AT_LIMIT, UT_SHOW_LIMITING, UT_N_SHOWS } UtLinkShow;
 
 /* Signal "changed". */
 UtLinkRow *ut_link_row_new (UtStudy *study, guint index);
@@ -33,6 +38,8 @@ const char *ut_link_row_text (UtLinkRow *row, UtLinkColumn column);
 
 /* For sorting: the figure of a numeric column (NAN sorts last), 0 for others. */
 double ut_link_row_figure (UtLinkRow *row, UtLinkColumn column);
+
+gboolean ut_link_row_passes (UtLinkRow *row, UtLinkShow show);
 
 const char *ut_link_column_title (UtLinkColumn column);
 gboolean ut_link_column_is_figure (UtLinkColumn column);

@@ -1,6 +1,7 @@
 #include "links-panel.h"
 
 #include <math.h>
+#include <string.h>
 
 #include <glib/gi18n.h>
 
@@ -9,9 +10,11 @@
 struct _UtLinksPanel
 {
   GtkWidget parent;
-  GtkWidget *scroller;
+  GtkWidget *box;
   GtkColumnView *view;
   GListStore *rows;
+  GtkCustomFilter *filter;
+  UtLinkShow show;
   GtkSortListModel *sorted;
   GtkMultiSelection *chosen;
   UtSolving *solving;
@@ -175,6 +178,7 @@ answered_cb (UtLinksPanel *self)
       g_autoptr (UtLinkRow) row = ut_link_row_new (study, i);
       g_list_store_append (self->rows, row);
     }
+  gtk_filter_changed (GTK_FILTER (self->filter), GTK_FILTER_CHANGE_DIFFERENT);
   gtk_sorter_changed (gtk_column_view_get_sorter (self->view), GTK_SORTER_CHANGE_DIFFERENT);
   self->coupling = FALSE;
   selection_changed_cb (self);
@@ -201,14 +205,109 @@ ut_links_panel_rows (UtLinksPanel *self)
   return G_LIST_MODEL (self->sorted);
 }
 
+/* ---- which links, which columns ---- */
+
+static gboolean
+passes (gpointer row, gpointer data)
+{
+  return ut_link_row_passes (row, UT_LINKS_PANEL (data)->show);
+}
+
+static void
+show_chosen_cb (GtkDropDown *drop, GParamSpec *spec, UtLinksPanel *self)
+{
+  (void) spec;
+  self->show = (UtLinkShow) gtk_drop_down_get_selected (drop);
+  self->coupling = TRUE;
+  gtk_filter_changed (GTK_FILTER (self->filter), GTK_FILTER_CHANGE_DIFFERENT);
+  self->coupling = FALSE;
+  if (self->selection != NULL)
+    selection_changed_cb (self);
+}
+
+/* The rows as shown, with the columns as shown (RFC 4180). */
+static char *
+csv_of (UtLinksPanel *self)
+{
+  GString *csv = g_string_new (NULL);
+  GListModel *columns = gtk_column_view_get_columns (self->view), *rows = G_LIST_MODEL (self->sorted);
+
+  for (guint row = 0; row <= g_list_model_get_n_items (rows); row++)
+    {
+      gboolean first = TRUE;
+
+      for (guint column = 0; column < UT_N_COLUMNS; column++)
+        {
+          g_autoptr (GtkColumnViewColumn) shown = g_list_model_get_item (columns, column);
+          g_autoptr (UtLinkRow) link = row > 0 ? g_list_model_get_item (rows, row - 1) : NULL;
+          const char *text = link != NULL ? ut_link_row_text (link, (UtLinkColumn) column) : ut_link_column_title ((UtLinkColumn) column);
+          g_auto (GStrv) quotes = g_strsplit (text, "\"", -1);
+          g_autofree char *quoted = g_strjoinv ("\"\"", quotes);
+
+          if (!gtk_column_view_column_get_visible (shown))
+            continue;
+          g_string_append_printf (csv, strpbrk (text, ",\"") != NULL ? "%s\"%s\"" : "%s%s", first ? "" : ",", quoted);
+          first = FALSE;
+        }
+      g_string_append (csv, "\r\n");
+    }
+  return g_string_free (csv, FALSE);
+}
+
+static void
+copy_cb (UtLinksPanel *self)
+{
+  g_autofree char *csv = csv_of (self);
+
+  gdk_clipboard_set_text (gtk_widget_get_clipboard (GTK_WIDGET (self)), csv);
+}
+
+/* A list of the columns, each to be shown or not. */
+static GtkWidget *
+columns_button (UtLinksPanel *self)
+{
+  GtkWidget *button = gtk_menu_button_new (), *popover = gtk_popover_new (), *list = gtk_box_new (GTK_ORIENTATION_VERTICAL, 2);
+  GListModel *columns = gtk_column_view_get_columns (self->view);
+
+  for (guint i = 1; i < UT_N_COLUMNS; i++)
+    {
+      g_autoptr (GtkColumnViewColumn) column = g_list_model_get_item (columns, i);
+      GtkWidget *check = gtk_check_button_new_with_label (ut_link_column_title ((UtLinkColumn) i));
+
+      g_object_bind_property (column, "visible", check, "active", G_BINDING_SYNC_CREATE | G_BINDING_BIDIRECTIONAL);
+      gtk_box_append (GTK_BOX (list), check);
+    }
+  gtk_popover_set_child (GTK_POPOVER (popover), list);
+  gtk_menu_button_set_popover (GTK_MENU_BUTTON (button), popover);
+  gtk_menu_button_set_label (GTK_MENU_BUTTON (button), _ ("Columns"));
+  return button;
+}
+
+static GtkWidget *
+bar_of (UtLinksPanel *self)
+{
+  const char *shows[] = { _ ("All links"), _ ("Those that fail"), _ ("Those at a limit"), _ ("The limiting group"), NULL };
+  GtkWidget *bar = gtk_box_new (GTK_ORIENTATION_HORIZONTAL, 8), *drop = gtk_drop_down_new_from_strings (shows), *copy = gtk_button_new_with_label (_ ("Copy as CSV"));
+
+  gtk_accessible_update_property (GTK_ACCESSIBLE (drop), GTK_ACCESSIBLE_PROPERTY_LABEL, _ ("Links shown"), -1);
+  g_signal_connect (drop, "notify::selected", G_CALLBACK (show_chosen_cb), self);
+  g_signal_connect_swapped (copy, "clicked", G_CALLBACK (copy_cb), self);
+  gtk_widget_add_css_class (bar, "bar");
+  gtk_box_append (GTK_BOX (bar), drop);
+  gtk_box_append (GTK_BOX (bar), columns_button (self));
+  gtk_box_append (GTK_BOX (bar), copy);
+  return bar;
+}
+
 static void
 ut_links_panel_dispose (GObject *object)
 {
   UtLinksPanel *self = UT_LINKS_PANEL (object);
 
-  g_clear_pointer (&self->scroller, gtk_widget_unparent);
+  g_clear_pointer (&self->box, gtk_widget_unparent);
   g_clear_object (&self->chosen);
   g_clear_object (&self->sorted);
+  g_clear_object (&self->filter);
   g_clear_object (&self->rows);
   g_clear_object (&self->solving);
   g_clear_object (&self->selection);
@@ -227,6 +326,8 @@ ut_links_panel_class_init (UtLinksPanelClass *class)
 static void
 ut_links_panel_init (UtLinksPanel *self)
 {
+  GtkWidget *scroller;
+
   self->rows = g_list_store_new (UT_TYPE_LINK_ROW);
   self->view = GTK_COLUMN_VIEW (gtk_column_view_new (NULL));
   gtk_column_view_set_show_row_separators (self->view, TRUE);
@@ -234,14 +335,18 @@ ut_links_panel_init (UtLinksPanel *self)
   gtk_accessible_update_property (GTK_ACCESSIBLE (self->view), GTK_ACCESSIBLE_PROPERTY_LABEL, _ ("Links"), -1);
   for (UtLinkColumn column = 0; column < UT_N_COLUMNS; column++)
     add_column (self, column);
-  self->sorted = gtk_sort_list_model_new (G_LIST_MODEL (g_object_ref (self->rows)),
+  self->filter = gtk_custom_filter_new (passes, self, NULL);
+  self->sorted = gtk_sort_list_model_new (G_LIST_MODEL (gtk_filter_list_model_new (G_LIST_MODEL (g_object_ref (self->rows)), GTK_FILTER (g_object_ref (self->filter)))),
                                           g_object_ref (gtk_column_view_get_sorter (self->view)));
   self->chosen = gtk_multi_selection_new (G_LIST_MODEL (g_object_ref (self->sorted)));
   g_signal_connect_object (self->chosen, "selection-changed", G_CALLBACK (chosen_changed_cb), self, G_CONNECT_SWAPPED);
   gtk_column_view_set_model (self->view, GTK_SELECTION_MODEL (self->chosen));
-  self->scroller = gtk_scrolled_window_new ();
-  gtk_scrolled_window_set_child (GTK_SCROLLED_WINDOW (self->scroller), GTK_WIDGET (self->view));
-  gtk_widget_set_vexpand (self->scroller, TRUE);
+  scroller = gtk_scrolled_window_new ();
+  gtk_scrolled_window_set_child (GTK_SCROLLED_WINDOW (scroller), GTK_WIDGET (self->view));
+  gtk_widget_set_vexpand (scroller, TRUE);
   gtk_widget_set_vexpand (GTK_WIDGET (self), TRUE);
-  gtk_widget_set_parent (self->scroller, GTK_WIDGET (self));
+  self->box = gtk_box_new (GTK_ORIENTATION_VERTICAL, 0);
+  gtk_box_append (GTK_BOX (self->box), bar_of (self));
+  gtk_box_append (GTK_BOX (self->box), scroller);
+  gtk_widget_set_parent (self->box, GTK_WIDGET (self));
 }

@@ -6,16 +6,14 @@
 
 struct _UtThingsPanel
 {
-  GtkWidget parent;
-  GtkWidget *scroller;
+  UtPanel parent;
   GtkStringList *texts;
   GtkMultiSelection *chosen;
-  UtDesk *desk;
   GArray *things; /* of UtPick, one for each text */
   gboolean coupling;
 };
 
-G_DEFINE_FINAL_TYPE (UtThingsPanel, ut_things_panel, GTK_TYPE_WIDGET)
+G_DEFINE_FINAL_TYPE (UtThingsPanel, ut_things_panel, UT_TYPE_PANEL)
 
 static void
 setup_cb (GtkSignalListItemFactory *factory, GtkListItem *item)
@@ -41,9 +39,9 @@ chosen_changed_cb (UtThingsPanel *self)
 {
   UtSelection *selection;
 
-  if (self->coupling || self->desk == NULL)
+  if (self->coupling || ut_panel_desk (UT_PANEL (self)) == NULL)
     return;
-  selection = ut_desk_selection (self->desk);
+  selection = ut_desk_selection (ut_panel_desk (UT_PANEL (self)));
   self->coupling = TRUE;
   ut_selection_freeze (selection);
   ut_selection_clear (selection);
@@ -60,30 +58,31 @@ show_selection (UtThingsPanel *self)
 {
   g_autoptr (GtkBitset) all = gtk_bitset_new_range (0, self->things->len), those = gtk_bitset_new_empty ();
 
-  if (self->coupling || self->desk == NULL)
+  if (self->coupling || ut_panel_desk (UT_PANEL (self)) == NULL)
     return;
   for (guint i = 0; i < self->things->len; i++)
-    if (ut_selection_has (ut_desk_selection (self->desk), g_array_index (self->things, UtPick, i).kind, g_array_index (self->things, UtPick, i).id))
+    if (ut_selection_has (ut_desk_selection (ut_panel_desk (UT_PANEL (self))), g_array_index (self->things, UtPick, i).kind, g_array_index (self->things, UtPick, i).id))
       gtk_bitset_add (those, i);
   self->coupling = TRUE;
   gtk_selection_model_set_selection (GTK_SELECTION_MODEL (self->chosen), those, all);
   self->coupling = FALSE;
 }
 
-/* Only lines that read otherwise are exchanged, so that the focus stays; and only while the list is shown. */
+/* Only lines that read otherwise are exchanged, so that the focus stays. */
 static void
-refresh (UtThingsPanel *self)
+ut_things_panel_refresh (UtPanel *panel)
 {
+  UtThingsPanel *self = UT_THINGS_PANEL (panel);
   guint had = g_list_model_get_n_items (G_LIST_MODEL (self->texts));
 
-  if (self->desk == NULL || !gtk_widget_get_mapped (GTK_WIDGET (self)) || ut_desk_has_draft (self->desk))
+  if (ut_desk_has_draft (ut_panel_desk (panel)))
     return;
   g_array_unref (self->things);
-  self->things = ut_things (ut_desk_plan (self->desk));
+  self->things = ut_things (ut_desk_plan (ut_panel_desk (UT_PANEL (self))));
   self->coupling = TRUE;
   for (guint i = 0; i < self->things->len; i++)
     {
-      g_autofree char *text = ut_thing_text (ut_desk_plan (self->desk), ut_desk_answer (self->desk), &g_array_index (self->things, UtPick, i));
+      g_autofree char *text = ut_thing_text (ut_desk_plan (ut_panel_desk (UT_PANEL (self))), ut_desk_answer (ut_panel_desk (UT_PANEL (self))), &g_array_index (self->things, UtPick, i));
       const char *line[] = { text, NULL };
 
       if (i >= had)
@@ -98,40 +97,13 @@ refresh (UtThingsPanel *self)
 }
 
 static void
-ut_things_panel_map (GtkWidget *widget)
-{
-  GTK_WIDGET_CLASS (ut_things_panel_parent_class)->map (widget);
-  refresh (UT_THINGS_PANEL (widget));
-}
-
-void
-ut_things_panel_set_desk (UtThingsPanel *self, UtDesk *desk)
-{
-  if (self->desk != NULL)
-    {
-      g_signal_handlers_disconnect_by_func (self->desk, refresh, self);
-      g_signal_handlers_disconnect_by_func (ut_desk_solving (self->desk), refresh, self);
-      g_signal_handlers_disconnect_by_func (ut_desk_selection (self->desk), show_selection, self);
-    }
-  g_set_object (&self->desk, desk);
-  if (desk == NULL)
-    return;
-  g_signal_connect_object (desk, "plan-changed", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
-  g_signal_connect_object (ut_desk_solving (desk), "answered", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
-  g_signal_connect_object (ut_desk_selection (desk), "changed", G_CALLBACK (show_selection), self, G_CONNECT_SWAPPED);
-  refresh (self);
-}
-
-static void
 ut_things_panel_dispose (GObject *object)
 {
   UtThingsPanel *self = UT_THINGS_PANEL (object);
 
-  ut_things_panel_set_desk (self, NULL);
-  g_clear_pointer (&self->scroller, gtk_widget_unparent);
+  G_OBJECT_CLASS (ut_things_panel_parent_class)->dispose (object);
   g_clear_object (&self->chosen);
   g_clear_object (&self->texts);
-  G_OBJECT_CLASS (ut_things_panel_parent_class)->dispose (object);
 }
 
 static void
@@ -146,16 +118,14 @@ ut_things_panel_class_init (UtThingsPanelClass *class)
 {
   G_OBJECT_CLASS (class)->dispose = ut_things_panel_dispose;
   G_OBJECT_CLASS (class)->finalize = ut_things_panel_finalize;
-  GTK_WIDGET_CLASS (class)->map = ut_things_panel_map;
-  gtk_widget_class_set_layout_manager_type (GTK_WIDGET_CLASS (class), GTK_TYPE_BIN_LAYOUT);
-  gtk_widget_class_set_accessible_role (GTK_WIDGET_CLASS (class), GTK_ACCESSIBLE_ROLE_GROUP);
+  UT_PANEL_CLASS (class)->refresh = ut_things_panel_refresh;
 }
 
 static void
 ut_things_panel_init (UtThingsPanel *self)
 {
   GtkListItemFactory *factory = gtk_signal_list_item_factory_new ();
-  GtkWidget *view;
+  GtkWidget *view, *scroller;
 
   self->things = g_array_new (FALSE, FALSE, sizeof (UtPick));
   self->texts = gtk_string_list_new (NULL);
@@ -165,8 +135,8 @@ ut_things_panel_init (UtThingsPanel *self)
   view = gtk_list_view_new (GTK_SELECTION_MODEL (g_object_ref (self->chosen)), factory);
   gtk_accessible_update_property (GTK_ACCESSIBLE (view), GTK_ACCESSIBLE_PROPERTY_LABEL, _ ("Everything on the plan"), -1);
   g_signal_connect_object (self->chosen, "selection-changed", G_CALLBACK (chosen_changed_cb), self, G_CONNECT_SWAPPED);
-  self->scroller = gtk_scrolled_window_new ();
-  gtk_scrolled_window_set_child (GTK_SCROLLED_WINDOW (self->scroller), view);
-  gtk_widget_set_vexpand (self->scroller, TRUE);
-  gtk_widget_set_parent (self->scroller, GTK_WIDGET (self));
+  scroller = gtk_scrolled_window_new ();
+  gtk_scrolled_window_set_child (GTK_SCROLLED_WINDOW (scroller), view);
+  gtk_widget_set_vexpand (scroller, TRUE);
+  ut_panel_set_child (UT_PANEL (self), scroller);
 }

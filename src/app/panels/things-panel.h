@@ -3,9 +3,7 @@
 
 #include <gtk/gtk.h>
 
-#include "desk.h"
+#include "panel.h"
 
 #define UT_TYPE_THINGS_PANEL (ut_things_panel_get_type ())
-G_DECLARE_FINAL_TYPE (UtThingsPanel, ut_things_panel, UT, THINGS_PANEL, GtkWidget)
-
-void ut_things_panel_set_desk (UtThingsPanel *panel, UtDesk *desk);
+G_DECLARE_FINAL_TYPE (UtThingsPanel, ut_things_panel, UT, THINGS_PANEL, UtPanel)
