@@ -17,11 +17,12 @@ struct _UtDesk
   const UtPlan *draft;
   UtQuestion question;
   guint storey;
+  UtStudy *shown; /* in the answer's place; NULL: the answer */
 };
 
 G_DEFINE_FINAL_TYPE (UtDesk, ut_desk, G_TYPE_OBJECT)
 
-enum { PLAN_CHANGED, QUESTION_CHANGED, STOREY_CHANGED, N_SIGNALS };
+enum { PLAN_CHANGED, QUESTION_CHANGED, STOREY_CHANGED, SHOWN_CHANGED, N_SIGNALS };
 static guint signals[N_SIGNALS];
 
 static void
@@ -30,6 +31,7 @@ ut_desk_dispose (GObject *object)
   UtDesk *self = UT_DESK (object);
 
   g_clear_pointer (&self->draft, ut_plan_unref);
+  g_clear_pointer (&self->shown, ut_study_unref);
   g_clear_object (&self->document);
   g_clear_object (&self->selection);
   g_clear_object (&self->solving);
@@ -41,6 +43,7 @@ ut_desk_class_init (UtDeskClass *class)
 {
   G_OBJECT_CLASS (class)->dispose = ut_desk_dispose;
   signals[PLAN_CHANGED] = g_signal_new ("plan-changed", UT_TYPE_DESK, G_SIGNAL_RUN_LAST, 0, NULL, NULL, NULL, G_TYPE_NONE, 0);
+  signals[SHOWN_CHANGED] = g_signal_new ("shown-changed", UT_TYPE_DESK, G_SIGNAL_RUN_LAST, 0, NULL, NULL, NULL, G_TYPE_NONE, 0);
   signals[STOREY_CHANGED] = g_signal_new ("storey-changed", UT_TYPE_DESK, G_SIGNAL_RUN_LAST, 0, NULL, NULL, NULL, G_TYPE_NONE, 0);
   signals[QUESTION_CHANGED] = g_signal_new ("question-changed", UT_TYPE_DESK, G_SIGNAL_RUN_LAST, 0, NULL, NULL, NULL, G_TYPE_NONE, 0);
 }
@@ -67,6 +70,7 @@ ask (UtDesk *self)
 static void
 show_plan (UtDesk *self)
 {
+  g_clear_pointer (&self->shown, ut_study_unref);
   ask (self);
   if (self->storey >= ut_desk_plan (self)->storeys->len)
     ut_desk_set_storey (self, ut_desk_plan (self)->storeys->len - 1);
@@ -219,6 +223,22 @@ with_radio (const UtPlan *plan, UtRadioKind kind, const char *id, void (*change)
   UtTerminal *terminal = ut_terminal_copy (ut_plan_terminal (plan, (guint) index));
   change (&terminal->radio, by);
   return ut_plan_with_terminal (plan, index, terminal);
+}
+
+UtStudy *
+ut_desk_shown (UtDesk *self)
+{
+  return self->shown != NULL ? self->shown : ut_desk_answer (self);
+}
+
+void
+ut_desk_set_shown (UtDesk *self, UtStudy *study)
+{
+  if (self->shown == study)
+    return;
+  g_clear_pointer (&self->shown, ut_study_unref);
+  self->shown = study != NULL ? ut_study_ref (study) : NULL;
+  g_signal_emit (self, signals[SHOWN_CHANGED], 0);
 }
 
 /* Places are kept to the millimetre: what a drag gives below that is noise. */

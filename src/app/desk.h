@@ -42,6 +42,11 @@ void ut_desk_set_question (UtDesk *desk, const UtQuestion *question);
 /* The answer to what is shown, or NULL while there is none: never an old one. */
 UtStudy *ut_desk_answer (UtDesk *desk);
 
+/* What the sheet colours its links by: the answer, unless another study was put in its place for a while, such as a round of power control.  It must be of a plan
+ * with the same radios in the same places; NULL ends it, as does any step.  Signal "shown-changed". */
+UtStudy *ut_desk_shown (UtDesk *desk);
+void ut_desk_set_shown (UtDesk *desk, UtStudy *study);
+
 /* Everything selected moved by (dx_m, dy_m): transfer full, the plan itself (a new reference) where nothing moves. */
 const UtPlan *ut_desk_moved (UtDesk *desk, const UtPlan *plan, double dx_m, double dy_m) G_GNUC_WARN_UNUSED_RESULT;
 

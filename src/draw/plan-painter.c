@@ -325,12 +325,15 @@ label_radios (cairo_t *cr, GArray *boxes, const UtPlan *plan, const UtPaintOptio
 
 /* The margin beside a link, with its sign; where the cell is on another storey, that storey's name too. */
 static char *
-link_text (const UtLinkAnswer *link, const char *elsewhere)
+link_text (const UtLinkAnswer *link, const char *elsewhere, gboolean reserves)
 {
   g_autofree char *figure = ut_report_figure (link->margin_db, 1);
   g_autofree char *sign = figure[0] == '-' ? g_strconcat ("−", figure + 1, NULL) : g_strconcat ("+", figure, NULL);
 
-  return elsewhere != NULL ? g_strdup_printf ("%s, %s", sign, elsewhere) : g_steal_pointer (&sign);
+  g_autofree char *reserve = ut_report_figure (link->reserve_db, 1);
+  g_autofree char *both = reserves && isfinite (link->reserve_db) ? g_strdup_printf ("%s (%s)", sign, reserve) : g_strdup (sign);
+
+  return elsewhere != NULL ? g_strdup_printf ("%s, %s", both, elsewhere) : g_steal_pointer (&both);
 }
 
 static void
@@ -347,7 +350,7 @@ label_links (cairo_t *cr, GArray *boxes, const UtPlan *plan, const UtStudy *stud
 
       if (!link_ends (plan, link, options, at, &elsewhere) || isnan (link->margin_db))
         continue;
-      g_autofree char *text = link_text (link, elsewhere);
+      g_autofree char *text = link_text (link, elsewhere, options->reserves);
       ut_text_extent (text, &style, &width, &height);
       for (guint k = 0; k < G_N_ELEMENTS (parts); k++)
         {

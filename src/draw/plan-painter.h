@@ -16,6 +16,7 @@ typedef struct
   gboolean grid, walls;      /* what does not move: with walls the backdrop and the openings */
   gboolean links, radios, labels;
   gboolean plates; /* labels are set off by plates instead of outlines: for screens */
+  gboolean reserves; /* behind a link's margin its reserve, where the study has it: for screens */
   GArray *boxes; /* places that labels must leave alone (labels.h), and gets theirs; NULL: none but the radios' own */
 } UtPaintOptions;
 

@@ -6,6 +6,7 @@
 #include <glib/gi18n.h>
 
 #include "control-plot.h"
+#include "plan-edit.h"
 #include "plot.h"
 #include "report.h"
 
@@ -21,6 +22,10 @@ struct _UtControlPanel
   UtStudy *study;
   UtControl *control;
   UtControlSetup setup; /* of it */
+  GtkWidget *play;
+  GtkScale *at;
+  guint timer;
+  int round; /* that the sheet shows; -1: none */
 };
 
 G_DEFINE_FINAL_TYPE (UtControlPanel, ut_control_panel, UT_TYPE_PANEL)
@@ -43,7 +48,7 @@ paint (cairo_t *cr, double width, double height, double text_size, const UtPalet
   UtControlPanel *self = data;
 
   if (self->control != NULL && ut_panel_desk (UT_PANEL (self)) != NULL)
-    ut_control_paint (cr, self->control, marked_link (self), -1, width, height, text_size, palette);
+    ut_control_paint (cr, self->control, marked_link (self), self->round, width, height, text_size, palette);
 }
 
 static char *
@@ -71,6 +76,123 @@ hover (double x, double y, double width, double height, double text_size, gpoint
     return NULL;
   g_autofree char *sinr = ut_report_figure (self->control->sinr_db[(gsize) at * self->control->links->len + (guint) link], 2);
   return g_strdup_printf (_ ("%s in round %.0f: %s dB"), ut_control_link_id (self->control, (guint) link), at, sinr);
+}
+
+/* ---- the sheet in a round ---- */
+
+/* The plan with the senders' powers of a round as set.  In the simultaneous downlink a power is a link's and no cell's. */
+static const UtPlan *
+plan_in_round (const UtControl *control, guint round)
+{
+  const UtPlan *plan = ut_plan_ref (control->gains->plan);
+
+  for (guint k = 0; k < control->senders->len; k++)
+    {
+      double power_dbm = control->power_dbm[(gsize) round * control->senders->len + k];
+      guint index = g_array_index (control->senders, guint, k);
+      const UtPlan *next;
+
+      if (control->direction == UT_DIRECTION_DOWN)
+        {
+          UtCell *cell = ut_cell_copy (ut_plan_cell (plan, index));
+
+          cell->radio.power_dbm = power_dbm;
+          next = ut_plan_with_cell (plan, (int) index, cell);
+        }
+      else
+        {
+          UtTerminal *terminal = ut_terminal_copy (ut_plan_terminal (plan, index));
+
+          terminal->radio.power_dbm = power_dbm;
+          next = ut_plan_with_terminal (plan, (int) index, terminal);
+        }
+      ut_plan_unref (plan);
+      plan = next;
+    }
+  return plan;
+}
+
+static gboolean
+can_play (UtControlPanel *self)
+{
+  return self->control != NULL && self->control->links->len > 0 && !(self->control->simultaneous && self->control->direction == UT_DIRECTION_DOWN);
+}
+
+static void
+show_round (UtControlPanel *self, int round)
+{
+  UtDesk *desk = ut_panel_desk (UT_PANEL (self));
+  UtQuestion question = { .aim = UT_AIM_AS_SET };
+
+  self->round = round;
+  gtk_widget_queue_draw (GTK_WIDGET (self));
+  ut_plot_changed (self->plot, gtk_label_get_text (self->words));
+  if (desk == NULL)
+    return;
+  if (round < 0 || !can_play (self) || ut_desk_has_draft (desk))
+    {
+      ut_desk_set_shown (desk, NULL);
+      return;
+    }
+  question.direction = self->control->direction;
+  g_autoptr (UtPlan) plan = (UtPlan *) plan_in_round (self->control, (guint) round);
+  g_autoptr (UtStudy) study = ut_study_new (plan, &question, self->study);
+  ut_desk_set_shown (desk, study);
+}
+
+static void
+stop_playing (UtControlPanel *self)
+{
+  g_clear_handle_id (&self->timer, g_source_remove);
+  gtk_toggle_button_set_active (GTK_TOGGLE_BUTTON (self->play), FALSE);
+}
+
+static gboolean
+next_round_cb (gpointer data)
+{
+  UtControlPanel *self = data;
+
+  if (!can_play (self) || self->round >= (int) self->control->n_rows - 1)
+    {
+      self->timer = 0;
+      gtk_toggle_button_set_active (GTK_TOGGLE_BUTTON (self->play), FALSE);
+      return G_SOURCE_REMOVE;
+    }
+  gtk_range_set_value (GTK_RANGE (self->at), self->round + 1);
+  return G_SOURCE_CONTINUE;
+}
+
+static void
+play_cb (UtControlPanel *self)
+{
+  if (!gtk_toggle_button_get_active (GTK_TOGGLE_BUTTON (self->play)))
+    g_clear_handle_id (&self->timer, g_source_remove);
+  else if (self->timer == 0 && can_play (self))
+    {
+      if (self->round >= (int) self->control->n_rows - 1 || self->round < 0)
+        {
+          gtk_range_set_value (GTK_RANGE (self->at), 0);
+          show_round (self, 0);
+        }
+      self->timer = g_timeout_add (250, next_round_cb, self);
+    }
+}
+
+static void
+at_cb (UtControlPanel *self)
+{
+  show_round (self, (int) gtk_range_get_value (GTK_RANGE (self->at)));
+}
+
+/* Out of sight the sheet shows the answer again. */
+static void
+ut_control_panel_unmap (GtkWidget *widget)
+{
+  UtControlPanel *self = UT_CONTROL_PANEL (widget);
+
+  stop_playing (self);
+  show_round (self, -1);
+  GTK_WIDGET_CLASS (ut_control_panel_parent_class)->unmap (widget);
 }
 
 /* Where it ends, in words. */
@@ -127,6 +249,10 @@ ut_control_panel_refresh (UtPanel *panel)
       self->study = ut_study_ref (study);
       self->setup = setup;
       self->control = ut_control_new (study, &setup);
+      stop_playing (self);
+      show_round (self, -1);
+      gtk_widget_set_sensitive (self->play, can_play (self));
+      gtk_widget_set_sensitive (GTK_WIDGET (self->at), can_play (self));
     }
   words = outcome (self->control);
   gtk_label_set_text (self->words, words);
@@ -139,6 +265,8 @@ ut_control_panel_let_go (UtPanel *panel)
 {
   UtControlPanel *self = UT_CONTROL_PANEL (panel);
 
+  g_clear_handle_id (&self->timer, g_source_remove);
+  self->round = -1;
   g_clear_pointer (&self->control, ut_control_free);
   g_clear_pointer (&self->study, ut_study_unref);
 }
@@ -154,6 +282,7 @@ ut_control_panel_class_init (UtControlPanelClass *class)
 {
   UT_PANEL_CLASS (class)->refresh = ut_control_panel_refresh;
   UT_PANEL_CLASS (class)->let_go = ut_control_panel_let_go;
+  GTK_WIDGET_CLASS (class)->unmap = ut_control_panel_unmap;
 }
 
 static void
@@ -209,8 +338,20 @@ ut_control_panel_init (UtControlPanel *self)
   gtk_label_set_xalign (self->words, 0);
   gtk_label_set_ellipsize (self->words, PANGO_ELLIPSIZE_END);
   gtk_widget_add_css_class (GTK_WIDGET (self->words), "words");
+  self->round = -1;
+  self->play = gtk_toggle_button_new_with_label (_ ("Play on the sheet"));
+  g_signal_connect_swapped (self->play, "toggled", G_CALLBACK (play_cb), self);
+  self->at = GTK_SCALE (gtk_scale_new_with_range (GTK_ORIENTATION_HORIZONTAL, 0, ROUNDS, 1));
+  gtk_widget_set_hexpand (GTK_WIDGET (self->at), TRUE);
+  name (GTK_WIDGET (self->at), _ ("Round that the sheet shows"));
+  g_signal_connect_swapped (self->at, "value-changed", G_CALLBACK (at_cb), self);
+  GtkWidget *foot = gtk_box_new (GTK_ORIENTATION_HORIZONTAL, 8);
+  gtk_widget_add_css_class (foot, "bar");
+  gtk_box_append (GTK_BOX (foot), self->play);
+  gtk_box_append (GTK_BOX (foot), GTK_WIDGET (self->at));
   gtk_box_append (GTK_BOX (box), scroller);
   gtk_box_append (GTK_BOX (box), GTK_WIDGET (self->plot));
+  gtk_box_append (GTK_BOX (box), foot);
   gtk_box_append (GTK_BOX (box), GTK_WIDGET (self->words));
   ut_panel_set_child (UT_PANEL (self), box);
 }

@@ -206,11 +206,20 @@ draw_interferers (const UtScene *scene, cairo_t *cr, GArray *boxes)
 #define KEY_TEXT_PX 11.0
 #define KEY_ROW_PX 20.0
 #define KEY_LINE_PX 28.0
-static const UtMarginClass key_classes[] = { UT_MARGIN_FAR_SHORT, UT_MARGIN_SHORT, UT_MARGIN_TIGHT, UT_MARGIN_EASY };
+/* The last one stands for the words about the figures. */
+static const UtMarginClass key_classes[] = { UT_MARGIN_FAR_SHORT, UT_MARGIN_SHORT, UT_MARGIN_TIGHT, UT_MARGIN_EASY, UT_N_MARGINS };
+
+static const char *
+figure_words (void)
+{
+  return _ ("+1.5 (2.0): margin, in brackets reserve, dB");
+}
 
 static double
 key_entry_width (UtMarginClass margin)
 {
+  if (margin == UT_N_MARGINS)
+    return ut_text_width (figure_words (), KEY_TEXT_PX) + 14;
   return KEY_LINE_PX + 6 + ut_text_width (ut_margin_words (margin), KEY_TEXT_PX) + 14;
 }
 
@@ -247,6 +256,11 @@ draw_key_entry (const UtScene *scene, cairo_t *cr, UtMarginClass margin, double 
   double dashes[4], width;
   int n_dashes;
 
+  if (margin == UT_N_MARGINS)
+    {
+      ut_text_draw (cr, figure_words (), x, y - 7, KEY_TEXT_PX, &scene->palette->ink, NULL);
+      return;
+    }
   ut_margin_line (margin, dashes, &n_dashes, &width);
   for (int k = 0; k < n_dashes; k++)
     dashes[k] *= UT_MARK_PX;
@@ -350,13 +364,13 @@ draw_living (const UtScene *scene, cairo_t *cr)
   g_autoptr (GArray) boxes = ut_boxes_new ();
 
   options.links = options.radios = options.labels = TRUE;
-  options.plates = TRUE;
+  options.plates = options.reserves = TRUE;
   options.boxes = boxes;
   ut_paint_take_radios (boxes, plan, &options);
   ut_scene_take_marks (scene, boxes);
   draw_interferers (scene, cr, boxes);
   draw_old_links (scene, cr, options);
-  ut_paint_plan (cr, plan, ut_desk_answer (scene->desk), &options);
+  ut_paint_plan (cr, plan, ut_desk_shown (scene->desk), &options);
   ut_scene_draw_marks (scene, cr);
   draw_key (scene, cr);
   draw_scale_bar (scene, cr);

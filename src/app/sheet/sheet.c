@@ -346,6 +346,7 @@ ut_sheet_set_desk (UtSheet *self, UtDesk *desk)
   if (desk == NULL)
     return;
   g_signal_connect_object (desk, "plan-changed", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
+  g_signal_connect_object (desk, "shown-changed", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (desk, "storey-changed", G_CALLBACK (show_storey), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (ut_desk_selection (desk), "changed", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
   g_signal_connect_object (ut_desk_solving (desk), "answered", G_CALLBACK (refresh), self, G_CONNECT_SWAPPED);
