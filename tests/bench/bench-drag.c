@@ -63,7 +63,7 @@ print_times (const char *what, double *times_ms)
 int
 main (void)
 {
-  g_autoptr (UtPlan) plan = (UtPlan *) bench_site ();
+  g_autoptr (UtPlan) plan = (UtPlan *) bench_site (20, 200);
   g_autoptr (UtDocument) document = ut_document_new (plan);
   g_autoptr (UtApplication) application = NULL;
   double handled_ms[RUNS], drawn_ms[RUNS], whole_ms[RUNS], x_px, y_px;
@@ -102,7 +102,7 @@ main (void)
     }
   g_signal_emit_by_name (drag, "drag-end", 5.0 + RUNS, 3.0 + 0.5 * RUNS);
 
-  printf ("dragging a cell: %d cells, %d terminals, %d wall pieces, sheet %d x %d, %d motions\n", N_CELLS, N_TERMINALS, 4 * N_WALLS,
+  printf ("dragging a cell: %d cells, %d terminals, %d wall pieces, sheet %d x %d, %d motions\n", 20, 200, 4 * N_WALLS,
           gtk_widget_get_width (GTK_WIDGET (sheet)), gtk_widget_get_height (GTK_WIDGET (sheet)), RUNS);
   print_times ("motion to finished frame", whole_ms);
   print_times ("  of that, the answer and the table", handled_ms);

@@ -10,7 +10,7 @@ add_item (GString *text, const char *before, gboolean first)
 }
 
 const UtPlan *
-bench_site (void)
+bench_site (int n_cells, int n_terminals)
 {
   g_autoptr (GRand) rand = g_rand_new_with_seed (20);
   GString *text = g_string_new ("{\"undertone\": 1, \"carrier\": {\"frequency_mhz\": 3750, \"bandwidth_mhz\": 20, \"sharing\": \"orthogonal\"},"
@@ -20,6 +20,7 @@ bench_site (void)
                                 "{\"id\": \"panel\", \"loss_db\": 6}], \"antennas\": [],"
                                 "\"storeys\": [{\"id\": \"S1\", \"elevation_m\": 0, \"height_m\": 4, \"walls\": [");
   g_autoptr (GPtrArray) faults = ut_faults_new ();
+  int columns = n_cells <= 20 ? 5 : 10, rows = (n_cells + columns - 1) / columns;
   const UtPlan *plan;
 
   for (int i = 0; i < N_WALLS; i++)
@@ -32,20 +33,20 @@ bench_site (void)
                               i, i % 2 ? "stud" : "panel", x, y, x + w, y, x + w, y + 4, x, y + 4, x, y);
     }
   g_string_append (text, "]}], \"cells\": [");
-  for (int i = 0; i < N_CELLS + N_TERMINALS; i++)
+  for (int i = 0; i < n_cells + n_terminals; i++)
     {
-      gboolean cell = i < N_CELLS;
+      gboolean cell = i < n_cells;
 
-      if (i == N_CELLS)
+      if (i == n_cells)
         g_string_append (text, "], \"terminals\": [");
-      add_item (text, "", i == 0 || i == N_CELLS);
+      add_item (text, "", i == 0 || i == n_cells);
       g_string_append_printf (text,
                               "{\"id\": \"R%d\", \"storey\": \"S1\", \"x_m\": %d.%d, \"y_m\": %d.%d, \"height_m\": %s, \"power_dbm\": 20, "
                               "\"power_min_dbm\": -20, \"power_max_dbm\": 24, \"power_step_db\": 0%s}",
                               i,
-                              cell ? 12 + 24 * (i % 5) : g_rand_int_range (rand, 0, 120),
+                              cell ? 120 / columns / 2 + 120 / columns * (i % columns) : g_rand_int_range (rand, 0, 120),
                               g_rand_int_range (rand, 0, 10),
-                              cell ? 10 + 20 * (i / 5) : g_rand_int_range (rand, 0, 80),
+                              cell ? 80 / rows / 2 + 80 / rows * (i / columns) : g_rand_int_range (rand, 0, 80),
                               g_rand_int_range (rand, 0, 10),
                               cell ? "3.5" : "1.2",
                               cell ? "" : ", \"target_down_db\": -4, \"target_up_db\": -4");

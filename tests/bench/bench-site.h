@@ -3,9 +3,7 @@
 
 #include "plan.h"
 
-#define N_CELLS 20
-#define N_TERMINALS 200
 #define N_WALLS 250 /* of four pieces */
 
-/* Transfer full. */
-const UtPlan *bench_site (void);
+/* Cells on a grid, terminals anywhere.  Transfer full. */
+const UtPlan *bench_site (int n_cells, int n_terminals);
