@@ -19,7 +19,7 @@ struct _UtSolving
   UtStudy *study;
   gboolean stale;
   double budget_ms;
-  double took_ms[2]; /* how long the last answer took: [FALSE] with everything computed, [TRUE] with walls and floors as before; 0: never yet */
+  double took_ms[4]; /* of the last answer of each class of cost, see cost_class () */
   Order *waiting; /* asked, not begun */
   guint debounce;
   GCancellable *cancellable; /* of the one in the thread */
@@ -92,13 +92,20 @@ is_renewal (const Order *order)
   return order->previous != NULL && ut_wall_index_holds (order->previous->gains->plan, order->plan);
 }
 
+/* Orders that cost about the same: renewals or not, with reserves and chances or not. */
+static guint
+cost_class (const Order *order)
+{
+  return (is_renewal (order) ? 1u : 0u) | (order->question.reserves || order->question.chances ? 2u : 0u);
+}
+
 /* Takes the study over. */
 static void
 accept (UtSolving *self, UtStudy *study, const Order *order)
 {
   g_clear_pointer (&self->study, ut_study_unref);
   self->study = study;
-  self->took_ms[is_renewal (order)] = order->took_ms;
+  self->took_ms[cost_class (order)] = order->took_ms;
   self->stale = FALSE;
   g_signal_emit (self, signals[ANSWERED], 0);
 }
@@ -154,7 +161,7 @@ ut_solving_ask (UtSolving *self, const UtPlan *plan, const UtQuestion *question)
   order->plan = ut_plan_ref (plan);
   order->question = *question;
   order->previous = self->study != NULL ? ut_study_ref (self->study) : NULL;
-  if (self->took_ms[is_renewal (order)] < self->budget_ms)
+  if (self->took_ms[cost_class (order)] < self->budget_ms)
     {
       accept (self, answer (order, NULL), order);
       order_free (order);

@@ -59,7 +59,7 @@ still_holds (const UtStillLayer *layer, const UtScene *scene, const UtPlan *plan
   return layer->node != NULL && layer->storey == scene->storey && layer->palette == scene->palette && layer->device_scale == scene->device_scale
          && same_view (&layer->view, scene->view) && layer->plan->storeys->len == plan->storeys->len
          && layer->plan->storeys->pdata[scene->storey] == plan->storeys->pdata[scene->storey] && same_ghost (layer, scene, plan) && layer->plan->constructions->len == plan->constructions->len
-         && memcmp (layer->plan->constructions->pdata, plan->constructions->pdata, plan->constructions->len * sizeof (gpointer)) == 0;
+         && (plan->constructions->len == 0 || memcmp (layer->plan->constructions->pdata, plan->constructions->pdata, plan->constructions->len * sizeof (gpointer)) == 0);
 }
 
 /* The walls of the storey below, faint. */
