@@ -19,6 +19,7 @@ typedef enum
   TAKES_SEED = 1 << 6,
   TAKES_LOOP = 1 << 7,
   TAKES_WISH = 1 << 8,
+  TAKES_PORTS = 1 << 9,
 } Takes;
 
 typedef struct
@@ -40,21 +41,23 @@ static const Verb verbs[] = {
   { "control", "PLAN", 1, TAKES_FORMAT | TAKES_CSV | TAKES_DIRECTION | TAKES_SEED | TAKES_LOOP, ut_verb_control,
     "the radios finding their powers by themselves" },
   { "target", "", 0, TAKES_FORMAT | TAKES_DIRECTION | TAKES_WISH, ut_verb_target, "SINR targets, bit rates and bandwidths (no plan)" },
+  { "powers", "PLAN", 1, TAKES_FORMAT | TAKES_CSV | TAKES_DIRECTION | TAKES_AIM | TAKES_PORTS, ut_verb_powers, "the settings to type into each radio" },
   { "page", "PLAN --output FILE", 1, TAKES_DIRECTION | TAKES_AIM | TAKES_OUTPUT | TAKES_PAPER, ut_verb_page, "the one page as .pdf, .svg or .png" },
 };
 
-static const char verb_names[] = "check, gains, path, solve, channels, control, target or page";
+static const char verb_names[] = "check, gains, path, solve, channels, control, target, powers or page";
 
 static const char options_help[] =
   "Options\n"
-  "  --format text|json|csv      how to print (csv: gains, solve, control)\n"
-  "  --direction down|up         which end transmits (solve, channels, control, page; default down)\n"
+  "  --format text|json|csv      how to print (csv: gains, solve, control, powers)\n"
+  "  --direction down|up         which end transmits (solve, channels, control, powers, page; default down)\n"
   "  --aim least-power|equal-margin|fewest-dropped|as-set\n"
-  "                              how powers are chosen (solve, page; default least-power)\n"
-  "  --hold DB                   dB kept in hand on every target when powers are chosen (solve, page; default 0)\n"
+  "                              how powers are chosen (solve, powers, page; default least-power)\n"
+  "  --hold DB                   dB kept in hand on every target when powers are chosen (solve, powers, page; default 0)\n"
   "  --output FILE               where the page goes; channels: where the plan with the channels found goes\n"
   "  --paper a4|a3|letter|tabloid, --orientation portrait|landscape\n"
   "                              the sheet (page; default a4, landscape)\n"
+  "  --ports N                   powers: antenna ports that share a radio's power (default 1)\n"
   "  --seed N                    of what is random (channels: starts; control: measurement errors; default 1)\n"
   "  --rule exact|steps          control: straight to the power needed, or up and down by a step (default exact)\n"
   "  --step DB                   control: that step (default 1)\n"
@@ -88,7 +91,7 @@ print_help (void)
 }
 
 /* Options and who takes them. */
-typedef enum { FORMAT, DIRECTION, AIM, HOLD, OUTPUT, PAPER, ORIENTATION, SEED, RULE, STEP, DELAY, ERROR, START, ROUNDS, EFFICIENCY, RATE, SINR, BANDWIDTH, CHANNEL, SUBCARRIER, LEVEL, N_OPTIONS } Option;
+typedef enum { FORMAT, DIRECTION, AIM, HOLD, OUTPUT, PAPER, ORIENTATION, SEED, RULE, STEP, DELAY, ERROR, START, ROUNDS, EFFICIENCY, RATE, SINR, BANDWIDTH, CHANNEL, SUBCARRIER, LEVEL, PORTS, N_OPTIONS } Option;
 
 static const struct
 {
@@ -117,6 +120,7 @@ static const struct
   [CHANNEL] = { "channel", TAKES_WISH, G_OPTION_ARG_STRING },
   [SUBCARRIER] = { "subcarrier", TAKES_WISH, G_OPTION_ARG_STRING },
   [LEVEL] = { "level", TAKES_WISH, G_OPTION_ARG_STRING },
+  [PORTS] = { "ports", TAKES_PORTS, G_OPTION_ARG_STRING },
 };
 
 /* Texts of the options as given; NULL where not. */
@@ -273,6 +277,10 @@ read_options (const Verb *verb, char *const *texts, UtOrder *order)
   if (!read_wish (texts, &order->wish) || !read_question (texts, &order->question) || !read_loop (texts, &order->loop)
       || !read_whole (texts, SEED, G_MAXUINT32, "a whole number from 0 to 4294967295", &order->loop.seed))
     return FALSE;
+  if (!read_whole (texts, PORTS, 1024, "a whole number of ports from 1 to 1024", &order->ports))
+    return FALSE;
+  if (order->ports == 0)
+    return wrong (PORTS, texts[PORTS], "a whole number of ports from 1 to 1024");
   return !(verb->takes & TAKES_PAPER) || read_page (texts, order);
 }
 
@@ -292,6 +300,7 @@ run (char **words, char *const *texts)
   UtOrder order = {
     .question = { .reserves = TRUE, .chances = TRUE, .remedies = TRUE },
     .loop = { .step_db = 1, .seed = 1, .rounds = 30 },
+    .ports = 1,
   };
 
   if (words[0] == NULL)
@@ -333,6 +342,8 @@ main (int argc, char **argv)
   for (Option option = 0; option < N_OPTIONS; option++)
     entries[3 + option] = (GOptionEntry){ options[option].name, 0, 0, options[option].type, &texts[option], NULL, NULL };
   setlocale (LC_ALL, "");
+  /* What programs may read stays English. */
+  setlocale (LC_MESSAGES, "C");
   g_autoptr (GOptionContext) context = g_option_context_new (NULL);
   g_option_context_set_help_enabled (context, FALSE);
   g_option_context_add_main_entries (context, entries, NULL);

@@ -8,6 +8,7 @@
 #include <gio/gio.h>
 
 #include "channels.h"
+#include "commissioning.h"
 #include "page-file.h"
 #include "path.h"
 #include "plan-check.h"
@@ -275,4 +276,25 @@ ut_verb_page (const UtOrder *order)
     return UT_EXIT_DONE;
   ut_complain ("%s: %s", order->output, error->message);
   return g_error_matches (error, G_IO_ERROR, G_IO_ERROR_INVALID_ARGUMENT) ? UT_EXIT_WRONG_USE : UT_EXIT_NOT_WRITTEN;
+}
+
+UtExit
+ut_verb_powers (const UtOrder *order)
+{
+  g_autoptr (UtPlan) plan = (UtPlan *) open_plan (order);
+  UtQuestion question = { .direction = order->question.direction, .aim = order->question.aim, .hold_db = order->question.hold_db };
+  UtCommissioning commissioning;
+
+  if (plan == NULL)
+    return UT_EXIT_BAD_PLAN;
+  g_autoptr (UtStudy) study = ut_study_new (plan, &question, NULL);
+  warn_all (study->warnings);
+  if (!ut_study_all_met (study))
+    ut_complain ("warning: not all targets are met with these powers; see undertone-cli solve");
+  ut_commissioning_make (study, &commissioning);
+  UtExit exit = ut_print_text (order->format == UT_FORMAT_JSON  ? ut_report_powers_json (&commissioning, order->ports)
+                               : order->format == UT_FORMAT_CSV ? ut_report_powers_csv (&commissioning, order->ports)
+                                                                : ut_report_powers_text (&commissioning, order->ports));
+  ut_commissioning_clear (&commissioning);
+  return exit;
 }

@@ -34,6 +34,7 @@ typedef struct
   UtPageSetup page;
   UtControlSetup loop; /* its seed is the order's seed */
   UtWish wish;
+  guint ports;        /* of the verb powers: each radio's power is shared by so many */
   const char *output; /* NULL: not given */
 } UtOrder;
 
@@ -44,6 +45,7 @@ UtExit ut_verb_solve (const UtOrder *order);
 UtExit ut_verb_channels (const UtOrder *order);
 UtExit ut_verb_control (const UtOrder *order);
 UtExit ut_verb_page (const UtOrder *order);
+UtExit ut_verb_powers (const UtOrder *order);
 
 UtExit ut_verb_target (const UtOrder *order);
 

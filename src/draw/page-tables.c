@@ -108,27 +108,34 @@ say_left_out (Table *table, guint n, const char *what)
 
 /* ---- power plan ---- */
 
+/* Azimuth from +y and from true north; the distance to keep off at full power. */
 static const Column power_columns[] = {
-  { "Radio", 0.095, FALSE }, { "Name", 0.175, FALSE }, { "x m", 0.085, TRUE }, { "y m", 0.085, TRUE }, { "h m", 0.075, TRUE }, { " Antenna", 0.14, FALSE },
-  { "Az. °", 0.07, TRUE }, { "Ch.", 0.055, TRUE }, { "dBm", 0.11, TRUE }, { "EIRP", 0.1, TRUE },
+  { "Radio", 0.08, FALSE }, { "Name", 0.15, FALSE }, { "x m", 0.07, TRUE }, { "y m", 0.07, TRUE }, { "h m", 0.06, TRUE }, { " Antenna", 0.115, FALSE },
+  { "Az. °", 0.06, TRUE }, { "N °", 0.06, TRUE }, { "Tilt", 0.05, TRUE }, { "Ch.", 0.05, TRUE }, { "dBm", 0.09, TRUE }, { "EIRP", 0.075, TRUE }, { "Off m", 0.07, TRUE },
 };
 
 static void
-draw_powers (cairo_t *cr, const UtStudy *study, const UtBox *box, guint n)
+draw_powers (cairo_t *cr, const UtCommissioning *commissioning, const UtBox *box, guint n)
 {
+  const UtStudy *study = commissioning->study;
   const UtPlan *plan = study->gains->plan;
   Table table = { cr, power_columns, G_N_ELEMENTS (power_columns), box->x, box->y, box->width };
 
-  draw_head (&table, "Power plan (dBm conducted, all ports; EIRP)");
+  draw_head (&table, "Power plan (dBm conducted, all ports; EIRP; azimuth from +y, from north; keep off)");
   for (guint i = 0; i < n; i++)
     {
       const UtTransmitterAnswer *sender = ut_study_transmitter (study, i);
       const UtRadio *radio = sender->is_cell ? &ut_plan_cell (plan, sender->index)->radio : &ut_plan_terminal (plan, sender->index)->radio;
       g_autofree char *x = ut_page_figure (radio->x_m, 1), *y = ut_page_figure (radio->y_m, 1), *height = ut_page_figure (radio->height_m, 1);
-      g_autofree char *azimuth = ut_page_figure (radio->azimuth_deg, 0), *power = ut_page_figure (sender->power_dbm, 2), *eirp = ut_page_figure (sender->eirp_dbm, 1);
+      g_autofree char *azimuth = ut_page_figure (radio->azimuth_deg, 0), *eirp = NULL, *power = NULL;
+      double power_dbm = ut_commissioning_dbm (commissioning, i);
+      power = ut_page_figure (power_dbm, 2);
+      eirp = ut_page_figure (sender->eirp_dbm + power_dbm - sender->power_dbm, 1);
       g_autofree char *channel = sender->is_cell ? g_strdup_printf ("%d", ut_plan_cell (plan, sender->index)->channel) : g_strdup ("");
       g_autofree char *antenna = g_strconcat (" ", radio->antenna, NULL);
-      char *const texts[] = { radio->id, radio->name, x, y, height, antenna, azimuth, channel, power, eirp };
+      g_autofree char *from_north = ut_page_figure (fmod (fmod (radio->azimuth_deg - plan->site->north_deg, 360) + 360, 360), 0);
+      g_autofree char *tilt = ut_page_figure (radio->downtilt_deg, 0), *off = ut_page_figure (sender->compliance_m, 2);
+      char *const texts[] = { radio->id, radio->name, x, y, height, antenna, azimuth, from_north, tilt, channel, power, eirp, off };
 
       draw_row (&table, texts, FALSE);
     }
@@ -181,8 +188,9 @@ draw_links (cairo_t *cr, const UtStudy *study, const UtBox *box, guint n)
 
 /* Under each other, or side by side where the page is upright; the power plan gets at most half of the height before links are cut. */
 void
-ut_page_draw_tables (cairo_t *cr, const UtStudy *study, const UtBox *box, gboolean side_by_side)
+ut_page_draw_tables (cairo_t *cr, const UtCommissioning *commissioning, const UtBox *box, gboolean side_by_side)
 {
+  const UtStudy *study = commissioning->study;
   guint senders = study->transmitters->len, links = study->links->len, n_senders, n_links;
   UtBox powers_box = *box, links_box = *box;
 
@@ -202,6 +210,6 @@ ut_page_draw_tables (cairo_t *cr, const UtStudy *study, const UtBox *box, gboole
       links_box.y = box->y + ut_page_table_height (n_senders) + (n_senders < senders ? ROW_MM : 0) + 4;
       n_links = rows_that_fit (links, box->y + box->height - links_box.y);
     }
-  draw_powers (cr, study, &powers_box, n_senders);
+  draw_powers (cr, commissioning, &powers_box, n_senders);
   draw_links (cr, study, &links_box, n_links);
 }

@@ -216,12 +216,15 @@ void
 ut_compose_page (cairo_t *cr, const UtStudy *study, const UtPageSetup *setup)
 {
   UtPageLayout layout;
+  UtCommissioning commissioning;
 
+  ut_commissioning_make (study, &commissioning);
   ut_page_layout (study->gains->plan, setup, &layout);
   draw_title (cr, study, setup, &layout.title);
   draw_verdict (cr, study, &layout.verdict);
   ut_page_draw_drawings (cr, study, setup);
   ut_page_draw_key (cr, study->gains->plan, &layout.key, ut_page_drawings (study->gains->plan, setup, NULL));
-  ut_page_draw_tables (cr, study, &layout.tables, setup->orientation == UT_PORTRAIT);
+  ut_page_draw_tables (cr, &commissioning, &layout.tables, setup->orientation == UT_PORTRAIT);
+  ut_commissioning_clear (&commissioning);
   ut_page_draw_notes (cr, study, &layout.notes);
 }
