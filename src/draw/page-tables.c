@@ -108,11 +108,52 @@ say_left_out (Table *table, guint n, const char *what)
 
 /* ---- power plan ---- */
 
-/* Azimuth from +y and from true north; the distance to keep off at full power. */
+/* The distance to keep off is at full power. */
 static const Column power_columns[] = {
-  { "Radio", 0.08, FALSE }, { "Name", 0.15, FALSE }, { "x m", 0.07, TRUE }, { "y m", 0.07, TRUE }, { "h m", 0.06, TRUE }, { " Antenna", 0.115, FALSE },
-  { "Az. °", 0.06, TRUE }, { "N °", 0.06, TRUE }, { "Tilt", 0.05, TRUE }, { "Ch.", 0.05, TRUE }, { "dBm", 0.09, TRUE }, { "EIRP", 0.075, TRUE }, { "Off m", 0.07, TRUE },
+  { "Radio", 0.1, FALSE }, { "Name", 0.25, FALSE }, { "x m", 0.1, TRUE }, { "y m", 0.1, TRUE }, { "h m", 0.07, TRUE },
+  { "Ch.", 0.06, TRUE },   { "dBm", 0.12, TRUE },   { "EIRP", 0.1, TRUE }, { "Off m", 0.1, TRUE },
 };
+
+/* The planner's own columns of a radio: "; cable tag A-07". */
+static void
+append_own (GString *text, const UtRadio *radio)
+{
+  JsonObjectIter iter;
+  const char *key;
+  JsonNode *node;
+
+  if (radio->fields == NULL)
+    return;
+  json_object_iter_init_ordered (&iter, radio->fields);
+  while (json_object_iter_next_ordered (&iter, &key, &node))
+    {
+      g_autofree char *value = JSON_NODE_HOLDS_VALUE (node) && json_node_get_value_type (node) == G_TYPE_STRING ? json_node_dup_string (node) : json_to_string (node, FALSE);
+
+      g_string_append_printf (text, "; %s %s", key, value);
+    }
+}
+
+/* Under a cell's row what else its installer needs. */
+static char *
+mounting (const UtPlan *plan, const UtRadio *radio, const UtTransmitterAnswer *sender)
+{
+  g_autofree char *azimuth = ut_page_figure (radio->azimuth_deg, 0), *from_north = ut_page_figure (fmod (fmod (radio->azimuth_deg - plan->site->north_deg, 360) + 360, 360), 0);
+  g_autofree char *tilt = ut_page_figure (radio->downtilt_deg, 0), *element = ut_page_figure (sender->element_dbm, 2);
+  GString *text = g_string_new (radio->antenna);
+
+  g_string_append_printf (text, ", %s° from +y, %s° from north, tilt %s°", azimuth, from_north, tilt);
+  if (isfinite (sender->element_dbm))
+    g_string_append_printf (text, "; %s dBm per element", element);
+  append_own (text, radio);
+  return g_string_free (text, FALSE);
+}
+
+/* Lines that a sender takes. */
+static guint
+lines_of (const UtStudy *study)
+{
+  return study->transmitters->len > 0 && ut_study_transmitter (study, 0)->is_cell ? 2 : 1;
+}
 
 static void
 draw_powers (cairo_t *cr, const UtCommissioning *commissioning, const UtBox *box, guint n)
@@ -121,23 +162,24 @@ draw_powers (cairo_t *cr, const UtCommissioning *commissioning, const UtBox *box
   const UtPlan *plan = study->gains->plan;
   Table table = { cr, power_columns, G_N_ELEMENTS (power_columns), box->x, box->y, box->width };
 
-  draw_head (&table, "Power plan (dBm conducted, all ports; EIRP; azimuth from +y, from north; keep off)");
+  draw_head (&table, "Power plan (dBm conducted, all ports; EIRP; keep off)");
   for (guint i = 0; i < n; i++)
     {
       const UtTransmitterAnswer *sender = ut_study_transmitter (study, i);
       const UtRadio *radio = sender->is_cell ? &ut_plan_cell (plan, sender->index)->radio : &ut_plan_terminal (plan, sender->index)->radio;
-      g_autofree char *x = ut_page_figure (radio->x_m, 1), *y = ut_page_figure (radio->y_m, 1), *height = ut_page_figure (radio->height_m, 1);
-      g_autofree char *azimuth = ut_page_figure (radio->azimuth_deg, 0), *eirp = NULL, *power = NULL;
       double power_dbm = ut_commissioning_dbm (commissioning, i);
-      power = ut_page_figure (power_dbm, 2);
-      eirp = ut_page_figure (sender->eirp_dbm + power_dbm - sender->power_dbm, 1);
+      g_autofree char *x = ut_page_figure (radio->x_m, 1), *y = ut_page_figure (radio->y_m, 1), *height = ut_page_figure (radio->height_m, 1);
+      g_autofree char *power = ut_page_figure (power_dbm, 2), *eirp = ut_page_figure (sender->eirp_dbm + power_dbm - sender->power_dbm, 1);
+      g_autofree char *off = ut_page_figure (sender->compliance_m, 2), *more = NULL;
       g_autofree char *channel = sender->is_cell ? g_strdup_printf ("%d", ut_plan_cell (plan, sender->index)->channel) : g_strdup ("");
-      g_autofree char *antenna = g_strconcat (" ", radio->antenna, NULL);
-      g_autofree char *from_north = ut_page_figure (fmod (fmod (radio->azimuth_deg - plan->site->north_deg, 360) + 360, 360), 0);
-      g_autofree char *tilt = ut_page_figure (radio->downtilt_deg, 0), *off = ut_page_figure (sender->compliance_m, 2);
-      char *const texts[] = { radio->id, radio->name, x, y, height, antenna, azimuth, from_north, tilt, channel, power, eirp, off };
+      char *const texts[] = { radio->id, radio->name, x, y, height, channel, power, eirp, off };
 
       draw_row (&table, texts, FALSE);
+      if (lines_of (study) == 1)
+        continue;
+      more = mounting (plan, radio, sender);
+      ut_text_place (cr, more, &(UtTextStyle){ .size = 0.92 * TEXT_MM, .width = 0.9 * table.width }, table.x + 0.1 * table.width, table.y - 0.1, &black, NULL);
+      table.y += ROW_MM;
     }
   say_left_out (&table, study->transmitters->len - n, "radios");
 }
@@ -186,6 +228,14 @@ draw_links (cairo_t *cr, const UtStudy *study, const UtBox *box, guint n)
   say_left_out (&table, study->links->len - n, "links, each with more to spare,");
 }
 
+static guint
+senders_that_fit (const UtStudy *study, double room_mm)
+{
+  guint lines = lines_of (study), n = study->transmitters->len, fit = rows_that_fit (lines * n, room_mm);
+
+  return fit == lines * n ? n : fit / lines;
+}
+
 /* Under each other, or side by side where the page is upright; the power plan gets at most half of the height before links are cut. */
 void
 ut_page_draw_tables (cairo_t *cr, const UtCommissioning *commissioning, const UtBox *box, gboolean side_by_side)
@@ -199,15 +249,15 @@ ut_page_draw_tables (cairo_t *cr, const UtCommissioning *commissioning, const Ut
       powers_box.width = box->width * 0.52;
       links_box.x = box->x + box->width * 0.54;
       links_box.width = box->width * 0.46;
-      n_senders = rows_that_fit (senders, box->height);
+      n_senders = senders_that_fit (study, box->height);
       n_links = rows_that_fit (links, box->height);
     }
   else
     {
       double links_need = ut_page_table_height (links + 1);
 
-      n_senders = rows_that_fit (senders, MAX (box->height - links_need - 4, box->height / 2 - 2));
-      links_box.y = box->y + ut_page_table_height (n_senders) + (n_senders < senders ? ROW_MM : 0) + 4;
+      n_senders = senders_that_fit (study, MAX (box->height - links_need - 4, box->height / 2 - 2));
+      links_box.y = box->y + ut_page_table_height (lines_of (study) * n_senders) + (n_senders < senders ? ROW_MM : 0) + 4;
       n_links = rows_that_fit (links, box->y + box->height - links_box.y);
     }
   draw_powers (cr, commissioning, &powers_box, n_senders);

@@ -85,7 +85,7 @@ ut_page_layout (const UtPlan *plan, const UtPageSetup *setup, UtPageLayout *layo
   else
     {
       /* The tables take what they need, the drawing the rest, within reason. */
-      double need = ut_page_table_height (MAX (plan->cells->len, plan->terminals->len)) + 2 * GAP_MM;
+      double need = ut_page_table_height (MAX (2 * plan->cells->len, plan->terminals->len)) + 2 * GAP_MM;
       double drawing = CLAMP (bottom - top - need, (bottom - top) * 0.45, (bottom - top) * 0.75);
 
       layout->drawing = (UtBox){ x, top, inner, drawing - KEY_MM - GAP_MM };
@@ -165,7 +165,7 @@ assumptions (const UtStudy *study)
 
   return g_strdup_printf ("%g MHz, noise bandwidth %g MHz, %g K. Sharing: %s, %d channel(s). Design margin %g dB. EIRP limit: %s. "
                           "Base loss: %s. Walls, floors and doors as drawn: %s (layered ones by ITU-R P.2040-3, %s). "
-                          "Measured gains: %u. %s Cells that share a channel in time division keep common frame timing.",
+                          "Measured gains: %u. %s Powers are over all ports. Cells that share a channel in time division keep common frame timing.",
                           carrier->frequency_mhz,
                           carrier->bandwidth_mhz,
                           carrier->noise_temperature_k,
