@@ -130,6 +130,7 @@ ut_application_startup (GApplication *application)
     { "win.close", { "<Control>w" } },
     { "win.zoom-in", { "<Control>plus", "<Control>equal" } },
     { "win.zoom-out", { "<Control>minus" } },
+    { "win.print", { "<Control>p" } },
     { "win.present", { "F5" } },
     { "win.fit", { "<Control>0" } },
     { "win.show-help-overlay", { "<Control>question" } },

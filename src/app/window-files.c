@@ -3,6 +3,7 @@
 
 #include <glib/gi18n.h>
 
+#include "commissioning.h"
 #include "compat.h"
 #include "page-file.h"
 #include "plan-read.h"
@@ -199,6 +200,47 @@ save_page_cb (GSimpleAction *action, GVariant *parameter, gpointer self)
   (void) action;
   (void) parameter;
   ut_compat_choose_file (self, TRUE, _ ("Save Page"), "page.pdf", ".pdf", page_chosen, self);
+}
+
+/* What is typed into the radios, as CSV or JSON by the name's ending. */
+static void
+powers_chosen (GFile *file, gpointer data)
+{
+  UtWindow *self = data;
+  UtStudy *study = ut_desk_answer (self->desk);
+  g_autofree char *path = g_file_get_path (file), *text = NULL;
+  g_autoptr (GError) error = NULL;
+  UtCommissioning commissioning;
+
+  if (study == NULL || path == NULL)
+    {
+      ut_compat_tell (GTK_WINDOW (self), _ ("The power sheet could not be saved"),
+                      study == NULL ? _ ("The answer is still being computed; try again in a moment.") : _ ("Only a local file can be written."));
+      return;
+    }
+  ut_commissioning_make (study, &commissioning);
+  text = g_str_has_suffix (path, ".json") ? ut_report_powers_json (&commissioning, 1) : ut_report_powers_csv (&commissioning, 1);
+  ut_commissioning_clear (&commissioning);
+  if (!g_file_set_contents (path, text, -1, &error))
+    ut_compat_tell (GTK_WINDOW (self), _ ("The power sheet could not be saved"), error->message);
+}
+
+static void
+save_powers_cb (GSimpleAction *action, GVariant *parameter, gpointer self)
+{
+  (void) action;
+  (void) parameter;
+  ut_compat_choose_file (self, TRUE, _ ("Save Power Sheet"), "powers.csv", ".csv", powers_chosen, self);
+}
+
+/* For drivers and scripts: at this path, without asking. */
+static void
+powers_to_cb (GSimpleAction *action, GVariant *parameter, gpointer self)
+{
+  g_autoptr (GFile) file = g_file_new_for_path (g_variant_get_string (parameter, NULL));
+
+  (void) action;
+  powers_chosen (file, self);
 }
 
 /* ---- opening ---- */
@@ -456,6 +498,7 @@ ut_window_add_file_actions (UtWindow *self)
     { .name = "open", .activate = open_cb },       { .name = "open-uri", .activate = open_uri_cb, .parameter_type = "s" },
     { .name = "save", .activate = save_cb },       { .name = "save-as", .activate = save_as_cb },
     { .name = "save-to", .activate = save_to_cb, .parameter_type = "s" }, { .name = "save-page", .activate = save_page_cb },
+    { .name = "save-powers", .activate = save_powers_cb }, { .name = "powers-to", .activate = powers_to_cb, .parameter_type = "s" },
     { .name = "start-new", .activate = start_new_cb }, { .name = "open-example", .activate = open_example_cb, .parameter_type = "s" },
     { .name = "reload", .activate = reload_cb },   { .name = "close-notice", .activate = close_notice_cb },
   };

@@ -52,6 +52,9 @@ void ut_window_show_edits (UtWindow *window);
 void ut_window_add_backdrop_actions (UtWindow *window);
 gboolean ut_window_take_picture (UtWindow *window, GFile *file);
 
+/* Actions of window-print.c. */
+void ut_window_add_print_actions (UtWindow *window);
+
 /* A line under the header that stays until it is closed; reload: with a button for that. */
 void ut_window_show_notice (UtWindow *window, const char *text, gboolean reload);
 

@@ -586,6 +586,7 @@ ut_window_init (UtWindow *self)
   ut_window_add_file_actions (self);
   ut_window_add_edit_actions (self);
   ut_window_add_backdrop_actions (self);
+  ut_window_add_print_actions (self);
   ut_sheet_set_menu (self->sheet, self->sheet_menu);
   ut_window_fill_recent (self);
   add_shortcuts (self);

@@ -191,6 +191,32 @@ with tempfile.TemporaryDirectory() as folder:
     app.act("panel", GLib.Variant("s", "links"))
     tap.check("panels tell why and what would help; a change is applied and undone", faults)
 
+    # What is printed is the command line's page.
+    printed, paged = pathlib.Path(folder) / "printed.pdf", pathlib.Path(folder) / "paged.pdf"
+    app.act("print-to", GLib.Variant("s", str(printed)))
+    app.wait("the printed page", lambda: printed.exists() and printed.read_bytes().rstrip().endswith(b"%%EOF"))
+    run(cli, "page", str(plan), "--output", str(paged))
+    texts = [subprocess.run(["pdftotext", "-bbox", str(file), "-"], capture_output=True, text=True).stdout for file in (printed, paged)]
+    words = [re.findall(r'xMin="([\d.]+)" yMin="([\d.]+)"[^>]*>([^<]*)<', text) for text in texts]
+    apart = [f"{a} and {b}" for a, b in zip(*words) if a[2] != b[2] or abs(float(a[0]) - float(b[0])) > 0.3 or abs(float(a[1]) - float(b[1])) > 0.3]
+    tap.check("printing gives the command line's page, word by word in its place", same("words", len(words[0]), len(words[1])) + apart[:5] + ([] if len(words[0]) > 100 else ["no page"]))
+
+    for ending, option in (("csv", "csv"), ("json", "json")):
+        sheet = pathlib.Path(folder) / f"powers.{ending}"
+        app.act("powers-to", GLib.Variant("s", str(sheet)))
+        app.wait("the sheet", sheet.exists)
+        tap.check(f"the power sheet is the command line's, {ending}", same("bytes", sheet.read_bytes() == run(cli, "powers", str(plan), "--format", option).stdout, True))
+
+    def preview():
+        return next((n for n in app.walk(app.frame.get_parent()) if "The page as it will be printed" in n.get_name()), None)
+
+    app.act("print-preview")
+    app.wait("the preview", preview)
+    time.sleep(0.3)
+    app.xdo("key", "Escape")
+    app.wait("its end", lambda: preview() is None)
+    tap.check("the preview opens and closes", [])
+
     # Drag a cell: the answer follows, and what is saved gives the same on the command line.
     before = app.verdict()
     app.drag(app.on_sheet(60, 24), app.on_sheet(40, 30))
