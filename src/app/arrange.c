@@ -3,6 +3,7 @@
 #include <math.h>
 
 #include "fragment.h"
+#include "places.h"
 #include "plan-edit.h"
 #include "wall-edits.h"
 
@@ -41,17 +42,11 @@ box_of (const UtPlan *plan, const UtPick *pick, Box *box)
   return TRUE;
 }
 
-static double
-to_mm (double value_m)
-{
-  return round (value_m * 1e3) / 1e3;
-}
-
 static void
 move_radio (UtRadio *radio, double dx_m, double dy_m)
 {
-  radio->x_m = to_mm (radio->x_m + dx_m);
-  radio->y_m = to_mm (radio->y_m + dy_m);
+  radio->x_m = ut_to_mm (radio->x_m + dx_m);
+  radio->y_m = ut_to_mm (radio->y_m + dy_m);
 }
 
 const UtPlan *
@@ -179,8 +174,7 @@ ut_plan_repeated (const UtPlan *plan, UtSelection *selection, guint storey, guin
           continue;
         next = ut_plan_with_fragment (repeated, fragment, storey, column * dx_m, row * dy_m, TRUE, &one);
         g_string_append (all, one);
-        ut_plan_unref (repeated);
-        repeated = next;
+        ut_plan_step (&repeated, next);
       }
   *added = g_string_free (all, FALSE);
   return repeated;

@@ -2,17 +2,12 @@
 
 #include <math.h>
 
+#include "places.h"
 #include "plan-edit.h"
 
 /* Of a picture that says nothing of its size. */
 #define WIDTH_M 30.0
 #define PAPER_SCALE 100.0
-
-static double
-to_mm (double value_m)
-{
-  return round (value_m * 1e3) / 1e3;
-}
 
 /* Smaller than anything an eye sees of a hundred metres. */
 static double
@@ -77,7 +72,7 @@ ut_plan_with_picture (const UtPlan *plan, guint index, const UtPicture *picture)
   else if (!walls_extent (storey, &backdrop->x_m, &backdrop->y_m, &backdrop->width_m))
     {
       backdrop->x_m = backdrop->y_m = 0;
-      backdrop->width_m = picture->width_mm > 0 ? to_mm (picture->width_mm / 1e3 * PAPER_SCALE) : WIDTH_M;
+      backdrop->width_m = picture->width_mm > 0 ? ut_to_mm (picture->width_mm / 1e3 * PAPER_SCALE) : WIDTH_M;
     }
   backdrop->height_m = to_micrometre (backdrop->width_m * picture->height_px / picture->width_px);
   return ut_plan_with_backdrop (plan, index, backdrop);
@@ -94,8 +89,8 @@ ut_plan_with_backdrop_moved (const UtPlan *plan, guint storey, double dx_m, doub
 {
   UtBackdrop *backdrop = copy_of (plan, storey);
 
-  backdrop->x_m = to_mm (backdrop->x_m + dx_m);
-  backdrop->y_m = to_mm (backdrop->y_m + dy_m);
+  backdrop->x_m = ut_to_mm (backdrop->x_m + dx_m);
+  backdrop->y_m = ut_to_mm (backdrop->y_m + dy_m);
   return ut_plan_with_backdrop (plan, storey, backdrop);
 }
 
@@ -125,8 +120,8 @@ ut_plan_with_backdrop_turned (const UtPlan *plan, guint storey, double by_deg)
 
   backdrop->turn_deg = fmod (backdrop->turn_deg + by_deg + 360, 360);
   moved = to_plan (backdrop, backdrop->width_m / 2, backdrop->height_m / 2);
-  backdrop->x_m = to_mm (backdrop->x_m + middle.x_m - moved.x_m);
-  backdrop->y_m = to_mm (backdrop->y_m + middle.y_m - moved.y_m);
+  backdrop->x_m = ut_to_mm (backdrop->x_m + middle.x_m - moved.x_m);
+  backdrop->y_m = ut_to_mm (backdrop->y_m + middle.y_m - moved.y_m);
   return ut_plan_with_backdrop (plan, storey, backdrop);
 }
 

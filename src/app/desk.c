@@ -6,6 +6,7 @@
 
 #include "arrange.h"
 #include "fragment.h"
+#include "places.h"
 #include "plan-edit.h"
 
 struct _UtDesk
@@ -241,13 +242,6 @@ ut_desk_set_shown (UtDesk *self, UtStudy *study)
   g_signal_emit (self, signals[SHOWN_CHANGED], 0);
 }
 
-/* Places are kept to the millimetre: what a drag gives below that is noise. */
-static double
-to_mm (double value_m)
-{
-  return round (value_m * 1e3) / 1e3;
-}
-
 static void
 set_power (UtRadio *radio, const double *power_dbm)
 {
@@ -263,8 +257,7 @@ ut_desk_moved (UtDesk *self, const UtPlan *plan, double dx_m, double dy_m)
     {
       const UtPlan *next = ut_plan_with_pick_moved (moved, ut_selection_pick (self->selection, i), dx_m, dy_m);
 
-      ut_plan_unref (moved);
-      moved = next;
+      ut_plan_step (&moved, next);
     }
   return moved;
 }
@@ -313,8 +306,7 @@ ut_desk_delete_selected (UtDesk *self)
     {
       const UtPlan *next = without (plan, ut_selection_pick (self->selection, i));
 
-      ut_plan_unref (plan);
-      plan = next;
+      ut_plan_step (&plan, next);
     }
   ut_desk_apply (self, plan, label, NULL);
 }
@@ -369,6 +361,21 @@ ut_desk_duplicate_selected (UtDesk *self)
   ut_desk_put_fragment (self, fragment, UT_DUPLICATE_M, -UT_DUPLICATE_M, TRUE, _ ("Duplicate"));
 }
 
+/* A copy gets a name and place of its own. */
+static void
+settle (UtRadio *radio, const char *id, const char *storey, double x_m, double y_m)
+{
+  g_free (radio->id);
+  g_free (radio->name);
+  g_free (radio->storey);
+  radio->id = g_strdup (id);
+  radio->name = g_strdup (id);
+  radio->storey = g_strdup (storey);
+  radio->x_m = ut_to_mm (x_m);
+  radio->y_m = ut_to_mm (y_m);
+  radio->on = TRUE;
+}
+
 /* What a new radio is like: the last of its kind in the plan, or the usual small cell and hand-held terminal. */
 static const UtPlan *
 with_new_cell (const UtPlan *plan, const char *id, const char *storey, double x_m, double y_m)
@@ -382,15 +389,7 @@ with_new_cell (const UtPlan *plan, const char *id, const char *storey, double x_
       radio->power_dbm = radio->power_max_dbm = 24;
       radio->power_min_dbm = 0;
     }
-  g_free (radio->id);
-  g_free (radio->name);
-  g_free (radio->storey);
-  radio->id = g_strdup (id);
-  radio->name = g_strdup (id);
-  radio->storey = g_strdup (storey);
-  radio->x_m = to_mm (x_m);
-  radio->y_m = to_mm (y_m);
-  radio->on = TRUE;
+  settle (radio, id, storey, x_m, y_m);
   return ut_plan_with_cell (plan, -1, cell);
 }
 
@@ -409,15 +408,7 @@ with_new_terminal (const UtPlan *plan, const char *id, const char *storey, doubl
       terminal->target_up_db = 3;
     }
   g_clear_pointer (&terminal->cell, g_free);
-  g_free (radio->id);
-  g_free (radio->name);
-  g_free (radio->storey);
-  radio->id = g_strdup (id);
-  radio->name = g_strdup (id);
-  radio->storey = g_strdup (storey);
-  radio->x_m = to_mm (x_m);
-  radio->y_m = to_mm (y_m);
-  radio->on = TRUE;
+  settle (radio, id, storey, x_m, y_m);
   return ut_plan_with_terminal (plan, -1, terminal);
 }
 

@@ -2,15 +2,8 @@
 
 #include <math.h>
 
+#include "places.h"
 #include "plan-edit.h"
-
-/* The next plan takes the place of the one before. */
-static void
-step (const UtPlan **plan, const UtPlan *next)
-{
-  ut_plan_unref (*plan);
-  *plan = next;
-}
 
 /* ---- taking a part ---- */
 
@@ -55,21 +48,21 @@ ut_plan_fragment (const UtPlan *plan, UtSelection *selection)
 
   for (guint i = plan->cells->len; i-- > 0;)
     if (!ut_selection_has (selection, UT_KIND_CELL, ut_plan_cell (plan, i)->radio.id))
-      step (&part, ut_plan_without_cell (part, (int) i));
+      ut_plan_step (&part, ut_plan_without_cell (part, (int) i));
   for (guint i = plan->terminals->len; i-- > 0;)
     if (!ut_selection_has (selection, UT_KIND_TERMINAL, ut_plan_terminal (plan, i)->radio.id))
-      step (&part, ut_plan_without_terminal (part, (int) i));
+      ut_plan_step (&part, ut_plan_without_terminal (part, (int) i));
   for (guint i = 0; i < plan->storeys->len; i++)
-    step (&part, bare_storey (part, plan, i, selection));
+    ut_plan_step (&part, bare_storey (part, plan, i, selection));
   for (guint i = plan->storeys->len; i-- > 0;)
     if (part->storeys->len > 1 && is_empty (part, i))
-      step (&part, ut_plan_without_storey (part, i));
+      ut_plan_step (&part, ut_plan_without_storey (part, i));
   for (guint i = plan->constructions->len; i-- > 0;)
     if (ut_plan_uses_of_construction (part, ut_plan_construction (plan, i)->id) == 0)
-      step (&part, ut_plan_without_construction (part, (int) i));
+      ut_plan_step (&part, ut_plan_without_construction (part, (int) i));
   for (guint i = plan->antennas->len; i-- > 0;)
     if (ut_plan_uses_of_antenna (part, ut_plan_antenna (plan, i)->id) == 0)
-      step (&part, ut_plan_without_antenna (part, (int) i));
+      ut_plan_step (&part, ut_plan_without_antenna (part, (int) i));
   return part;
 }
 
@@ -196,7 +189,7 @@ bring_constructions (Coming *coming)
           copy->id = ut_plan_free_construction_id (coming->plan);
         }
       g_hash_table_insert (coming->constructions, g_strdup (construction->id), g_strdup (copy->id));
-      step (&coming->plan, ut_plan_with_construction (coming->plan, -1, copy));
+      ut_plan_step (&coming->plan, ut_plan_with_construction (coming->plan, -1, copy));
     }
 }
 
@@ -221,7 +214,7 @@ bring_antennas (Coming *coming)
           copy->id = ut_plan_free_antenna_id (coming->plan);
         }
       g_hash_table_insert (coming->antennas, g_strdup (antenna->id), g_strdup (copy->id));
-      step (&coming->plan, ut_plan_with_antenna (coming->plan, -1, copy));
+      ut_plan_step (&coming->plan, ut_plan_with_antenna (coming->plan, -1, copy));
     }
 }
 
@@ -232,12 +225,6 @@ storey_for (const Coming *coming, const char *id)
   int same = coming->fragment->storeys->len > 1 ? ut_plan_find_storey (coming->plan, id) : -1;
 
   return same >= 0 ? (guint) same : coming->storey;
-}
-
-static double
-to_mm (double value_m)
-{
-  return round (value_m * 1e3) / 1e3;
 }
 
 static void
@@ -256,7 +243,7 @@ bring_walls (Coming *coming, const UtStorey *from)
         {
           UtPoint *point = &g_array_index (wall->points, UtPoint, i);
 
-          *point = (UtPoint){ to_mm (point->x_m + coming->dx_m), to_mm (point->y_m + coming->dy_m) };
+          *point = (UtPoint){ ut_to_mm (point->x_m + coming->dx_m), ut_to_mm (point->y_m + coming->dy_m) };
         }
       for (guint i = 0; i < wall->openings->len; i++)
         {
@@ -267,7 +254,7 @@ bring_walls (Coming *coming, const UtStorey *from)
           wall->openings->pdata[i] = opening;
         }
       g_string_append_printf (coming->added, "wall %s%c%s\n", ut_plan_storey (coming->plan, storey)->id, UT_WALL_PICK_BREAK, wall->id);
-      step (&coming->plan, ut_plan_with_wall (coming->plan, storey, -1, wall));
+      ut_plan_step (&coming->plan, ut_plan_with_wall (coming->plan, storey, -1, wall));
     }
 }
 
@@ -284,8 +271,8 @@ settle (const Coming *coming, UtRadio *radio, char *id)
   replace_text (&radio->storey, ut_plan_storey (coming->plan, storey_for (coming, radio->storey))->id);
   if (antenna != NULL)
     replace_text (&radio->antenna, antenna);
-  radio->x_m = to_mm (radio->x_m + coming->dx_m);
-  radio->y_m = to_mm (radio->y_m + coming->dy_m);
+  radio->x_m = ut_to_mm (radio->x_m + coming->dx_m);
+  radio->y_m = ut_to_mm (radio->y_m + coming->dy_m);
 }
 
 static void
@@ -299,7 +286,7 @@ bring_radios (Coming *coming, const UtPlan *origin)
       cell->channel = MIN (cell->channel, MAX (coming->plan->carrier->channels, 1));
       g_hash_table_insert (coming->cells, g_strdup (ut_plan_cell (coming->fragment, i)->radio.id), g_strdup (cell->radio.id));
       g_string_append_printf (coming->added, "cell %s\n", cell->radio.id);
-      step (&coming->plan, ut_plan_with_cell (coming->plan, -1, cell));
+      ut_plan_step (&coming->plan, ut_plan_with_cell (coming->plan, -1, cell));
     }
   for (guint i = 0; i < coming->fragment->terminals->len; i++)
     {
@@ -313,7 +300,7 @@ bring_radios (Coming *coming, const UtPlan *origin)
       else if (before >= 0)
         replace_text (&terminal->cell, ut_plan_terminal (origin, (guint) before)->cell);
       g_string_append_printf (coming->added, "terminal %s\n", terminal->radio.id);
-      step (&coming->plan, ut_plan_with_terminal (coming->plan, -1, terminal));
+      ut_plan_step (&coming->plan, ut_plan_with_terminal (coming->plan, -1, terminal));
     }
 }
 

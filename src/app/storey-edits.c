@@ -4,14 +4,9 @@
 
 #include <glib/gi18n.h>
 
+#include "places.h"
 #include "plan-edit.h"
 #include "wall-edits.h"
-
-static double
-to_mm (double value_m)
-{
-  return round (value_m * 1e3) / 1e3;
-}
 
 static guint
 highest (const UtPlan *plan)
@@ -34,7 +29,7 @@ on_top (const UtPlan *plan, UtStorey *storey, guint *index)
   g_free (storey->name);
   storey->id = ut_plan_free_storey_id (plan);
   storey->name = g_strdup_printf (_ ("Storey %u"), plan->storeys->len + 1);
-  storey->elevation_m = to_mm (top->elevation_m + top->height_m);
+  storey->elevation_m = ut_to_mm (top->elevation_m + top->height_m);
   *index = plan->storeys->len;
   return ut_plan_with_storey (plan, -1, storey);
 }
@@ -56,54 +51,41 @@ ut_plan_with_storey_copied (const UtPlan *plan, guint from, guint *index)
   return on_top (plan, ut_storey_copy (ut_plan_storey (plan, from)), index);
 }
 
-static void
-step (const UtPlan **plan, const UtPlan *next)
+typedef struct
 {
-  ut_plan_unref (*plan);
-  *plan = next;
-}
+  const char *storey;
+  double dx_m, dy_m;
+} Move;
 
-static void
-move_radio (UtRadio *radio, double dx_m, double dy_m)
+static gboolean
+move_radio (UtRadio *radio, gconstpointer user)
 {
-  radio->x_m = to_mm (radio->x_m + dx_m);
-  radio->y_m = to_mm (radio->y_m + dy_m);
+  const Move *move = user;
+
+  if (!g_str_equal (radio->storey, move->storey))
+    return FALSE;
+  radio->x_m = ut_to_mm (radio->x_m + move->dx_m);
+  radio->y_m = ut_to_mm (radio->y_m + move->dy_m);
+  return TRUE;
 }
 
 const UtPlan *
 ut_plan_with_storey_moved (const UtPlan *plan, guint index, double dx_m, double dy_m)
 {
-  const UtPlan *moved = ut_plan_ref (plan);
-  const char *id = ut_plan_storey (plan, index)->id;
+  const UtPlan *moved = ut_plan_with_each_radio (plan, move_radio, &(Move){ ut_plan_storey (plan, index)->id, dx_m, dy_m });
 
   for (guint w = 0; w < ut_plan_storey (plan, index)->walls->len; w++)
-    step (&moved, ut_plan_with_wall_moved (moved, index, w, dx_m, dy_m));
-  for (guint i = 0; i < plan->cells->len; i++)
-    if (g_str_equal (ut_plan_cell (plan, i)->radio.storey, id))
-      {
-        UtCell *cell = ut_cell_copy (ut_plan_cell (plan, i));
-
-        move_radio (&cell->radio, dx_m, dy_m);
-        step (&moved, ut_plan_with_cell (moved, (int) i, cell));
-      }
-  for (guint i = 0; i < plan->terminals->len; i++)
-    if (g_str_equal (ut_plan_terminal (plan, i)->radio.storey, id))
-      {
-        UtTerminal *terminal = ut_terminal_copy (ut_plan_terminal (plan, i));
-
-        move_radio (&terminal->radio, dx_m, dy_m);
-        step (&moved, ut_plan_with_terminal (moved, (int) i, terminal));
-      }
+    ut_plan_step (&moved, ut_plan_with_wall_moved (moved, index, w, dx_m, dy_m));
   if (ut_plan_storey (plan, index)->backdrop != NULL)
     {
       UtStorey *storey = ut_storey_copy (ut_plan_storey (moved, index));
       UtBackdrop *backdrop = ut_backdrop_copy (storey->backdrop);
 
-      backdrop->x_m = to_mm (backdrop->x_m + dx_m);
-      backdrop->y_m = to_mm (backdrop->y_m + dy_m);
+      backdrop->x_m = ut_to_mm (backdrop->x_m + dx_m);
+      backdrop->y_m = ut_to_mm (backdrop->y_m + dy_m);
       ut_backdrop_unref (storey->backdrop);
       storey->backdrop = backdrop;
-      step (&moved, ut_plan_with_storey (moved, (int) index, storey));
+      ut_plan_step (&moved, ut_plan_with_storey (moved, (int) index, storey));
     }
   return moved;
 }

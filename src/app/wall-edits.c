@@ -5,13 +5,8 @@
 
 #include <glib/gi18n.h>
 
+#include "places.h"
 #include "plan-edit.h"
-
-static double
-to_mm (double value_m)
-{
-  return round (value_m * 1e3) / 1e3;
-}
 
 /* ---- constructions ---- */
 
@@ -63,8 +58,7 @@ ut_plan_with_starter_constructions (const UtPlan *plan)
     {
       const UtPlan *next = with_starter (with, &starters[i]);
 
-      ut_plan_unref (with);
-      with = next;
+      ut_plan_step (&with, next);
     }
   return with;
 }
@@ -168,7 +162,7 @@ ut_plan_with_new_wall (const UtPlan *plan, guint storey, const GArray *points, c
     {
       UtPoint point = g_array_index (points, UtPoint, i);
 
-      point = (UtPoint){ to_mm (point.x_m), to_mm (point.y_m) };
+      point = (UtPoint){ ut_to_mm (point.x_m), ut_to_mm (point.y_m) };
       g_array_append_val (wall->points, point);
     }
   *id = g_strdup (wall->id);
@@ -184,7 +178,7 @@ ut_plan_with_wall_moved (const UtPlan *plan, guint storey, guint index, double d
     {
       UtPoint *point = &g_array_index (wall->points, UtPoint, i);
 
-      *point = (UtPoint){ to_mm (point->x_m + dx_m), to_mm (point->y_m + dy_m) };
+      *point = (UtPoint){ ut_to_mm (point->x_m + dx_m), ut_to_mm (point->y_m + dy_m) };
     }
   return ut_plan_with_wall (plan, storey, (int) index, wall);
 }
@@ -194,7 +188,7 @@ set_at (UtWall *wall, guint index, double at_m)
 {
   UtOpening *opening = ut_opening_copy (wall->openings->pdata[index]);
 
-  opening->at_m = MAX (to_mm (at_m), 0);
+  opening->at_m = MAX (ut_to_mm (at_m), 0);
   ut_opening_unref (wall->openings->pdata[index]);
   wall->openings->pdata[index] = opening;
 }
@@ -238,7 +232,7 @@ ut_plan_with_vertex (const UtPlan *plan, guint storey, guint index, guint vertex
   const UtWall *old = wall_at (plan, storey, index);
   UtWall *wall = ut_wall_copy (old);
 
-  g_array_index (wall->points, UtPoint, vertex) = (UtPoint){ to_mm (x_m), to_mm (y_m) };
+  g_array_index (wall->points, UtPoint, vertex) = (UtPoint){ ut_to_mm (x_m), ut_to_mm (y_m) };
   keep_openings (wall, old, same_vertex, vertex);
   return ut_plan_with_wall (plan, storey, (int) index, wall);
 }
@@ -248,7 +242,7 @@ ut_plan_with_vertex_added (const UtPlan *plan, guint storey, guint index, guint 
 {
   const UtWall *old = wall_at (plan, storey, index);
   UtWall *wall = ut_wall_copy (old);
-  UtPoint point = { to_mm (x_m), to_mm (y_m) };
+  UtPoint point = { ut_to_mm (x_m), ut_to_mm (y_m) };
 
   g_array_insert_val (wall->points, piece + 1, point);
   keep_openings (wall, old, vertex_after_adding, piece);
@@ -373,8 +367,8 @@ ut_plan_with_opening (const UtPlan *plan, guint storey, guint index, double from
 
   g_free (opening->construction);
   opening->construction = g_strdup (ut_plan_construction (with, (guint) MAX (ut_plan_usual_construction (with, TRUE), 0))->id);
-  opening->at_m = MAX (to_mm (MIN (from_m, to_m)), 0);
-  opening->width_m = MAX (to_mm (fabs (to_m - from_m)), 0.001);
+  opening->at_m = MAX (ut_to_mm (MIN (from_m, to_m)), 0);
+  opening->width_m = MAX (ut_to_mm (fabs (to_m - from_m)), 0.001);
   /* As high as doors are (common practice), where the storey is higher. */
   if (ut_plan_storey (plan, storey)->height_m > 2.2)
     opening->head_m = 2.1;

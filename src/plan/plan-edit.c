@@ -252,6 +252,29 @@ ut_plan_with_terminal (const UtPlan *plan, int index, UtTerminal *terminal)
 }
 
 const UtPlan *
+ut_plan_with_each_radio (const UtPlan *plan,
+                         gboolean (*change) (UtRadio *radio, gconstpointer user),
+                         gconstpointer user)
+{
+  UtPlan *next = begin (plan);
+  own_list (&next->cells, &ut_kind_cell);
+  own_list (&next->terminals, &ut_kind_terminal);
+  for (guint i = 0; i < plan->cells->len; i++)
+    {
+      g_autoptr (UtCell) cell = ut_cell_copy (ut_plan_cell (plan, i));
+      if (change (&cell->radio, user))
+        set_item (next->cells, &ut_kind_cell, (int)i, g_steal_pointer (&cell));
+    }
+  for (guint i = 0; i < plan->terminals->len; i++)
+    {
+      g_autoptr (UtTerminal) terminal = ut_terminal_copy (ut_plan_terminal (plan, i));
+      if (change (&terminal->radio, user))
+        set_item (next->terminals, &ut_kind_terminal, (int)i, g_steal_pointer (&terminal));
+    }
+  return next;
+}
+
+const UtPlan *
 ut_plan_with_storey (const UtPlan *plan, int index, UtStorey *storey)
 {
   UtPlan *next = begin (plan);

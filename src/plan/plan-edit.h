@@ -5,6 +5,14 @@
 
 #include "plan.h"
 
+/* The next plan takes the place of the one before, for chains of edits: *plan is given up, `next` taken over. */
+static inline void
+ut_plan_step (const UtPlan **plan, const UtPlan *next)
+{
+  ut_plan_unref (*plan);
+  *plan = next;
+}
+
 /* The texts of the title block and the notes. */
 typedef enum
 {
@@ -23,6 +31,11 @@ const UtPlan *ut_plan_with_propagation (const UtPlan *plan, UtPropagation *propa
 const UtPlan *ut_plan_with_cell (const UtPlan *plan, int index, UtCell *cell); /* -1: append */
 const UtPlan *
 ut_plan_with_terminal (const UtPlan *plan, int index, UtTerminal *terminal); /* -1: append */
+/* Every cell and terminal for which the function changes the copy it gets, and says so; the others
+ * stay shared. */
+const UtPlan *ut_plan_with_each_radio (const UtPlan *plan,
+                                       gboolean (*change) (UtRadio *radio, gconstpointer user),
+                                       gconstpointer user);
 /* Sets the measured gain of a pair, by their ids; it must exist. */
 const UtPlan *ut_plan_with_measured_gain (const UtPlan *plan,
                                           const char *terminal,

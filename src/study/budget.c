@@ -33,42 +33,14 @@ saved_db (const UtStudy *planned)
   return set_mw > 0 && chosen_mw > 0 ? ut_db_from_ratio (set_mw / chosen_mw) : NAN;
 }
 
-static void
-turn_down (UtRadio *radio, double by_db)
+/* So many dB lower, whatever its lowest power: what would be, if it could. */
+static gboolean
+turn_down (UtRadio *radio, gconstpointer by_db)
 {
-  radio->power_dbm -= by_db;
+  radio->power_dbm -= *(const double *) by_db;
   radio->power_min_dbm = fmin (radio->power_min_dbm, radio->power_dbm);
   radio->power_step_db = 0;
-}
-
-/* Every radio set so many dB lower, whatever its lowest power: what would be, if it could. */
-static const UtPlan *
-with_all_down (const UtPlan *plan, double by_db)
-{
-  const UtPlan *down = ut_plan_ref (plan);
-
-  for (guint i = 0; i < plan->cells->len + plan->terminals->len; i++)
-    {
-      const UtPlan *next;
-
-      if (i < plan->cells->len)
-        {
-          UtCell *cell = ut_cell_copy (ut_plan_cell (plan, i));
-
-          turn_down (&cell->radio, by_db);
-          next = ut_plan_with_cell (down, (int) i, cell);
-        }
-      else
-        {
-          UtTerminal *terminal = ut_terminal_copy (ut_plan_terminal (plan, i - plan->cells->len));
-
-          turn_down (&terminal->radio, by_db);
-          next = ut_plan_with_terminal (down, (int) (i - plan->cells->len), terminal);
-        }
-      ut_plan_unref (down);
-      down = next;
-    }
-  return down;
+  return TRUE;
 }
 
 gboolean
@@ -79,7 +51,7 @@ ut_budget_cases_make (UtStudy *planned, GCancellable *cancellable, UtBudgetCases
   g_autoptr (UtPlan) down = NULL;
 
   *cases = (UtBudgetCases){ .down_db = down_db > 0.05 ? down_db : USUAL_DOWN_DB };
-  down = (UtPlan *) with_all_down (planned->gains->plan, cases->down_db);
+  down = (UtPlan *) ut_plan_with_each_radio (planned->gains->plan, turn_down, &cases->down_db);
   cases->studies[UT_CASE_PLANNED] = ut_study_ref (planned);
   cases->studies[UT_CASE_AS_SET] = ut_study_new_cancellable (planned->gains->plan, &as_set, planned, cancellable);
   cases->studies[UT_CASE_ALL_DOWN] = cases->studies[UT_CASE_AS_SET] == NULL ? NULL : ut_study_new_cancellable (down, &as_set, planned, cancellable);

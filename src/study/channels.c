@@ -347,8 +347,7 @@ plan_with (const UtPlan *plan, const int *channel)
 
         cell->channel = channel[c];
         next = ut_plan_with_cell (found, (int) c, cell);
-        ut_plan_unref (found);
-        found = next;
+        ut_plan_step (&found, next);
       }
   return found;
 }

@@ -7,46 +7,19 @@
 static const double ladders_db[] = { 0.1, 0.01, 0.001 };
 
 /* Limits moved inwards to the ladder, which begins at the lowest power.  Radios with steps of their own, and those whose range holds no rung, stay as they are. */
-static void
-put_on_ladder (UtRadio *radio, double ladder_db)
+static gboolean
+put_on_ladder (UtRadio *radio, gconstpointer user)
 {
+  double ladder_db = *(const double *) user;
   double low = ceil (radio->power_min_dbm / ladder_db - 1e-9) * ladder_db, high = floor (radio->power_max_dbm / ladder_db + 1e-9) * ladder_db;
 
   if (radio->power_step_db > 0 || low > high)
-    return;
+    return FALSE;
   radio->power_min_dbm = low;
   radio->power_max_dbm = high;
   radio->power_step_db = ladder_db;
   radio->power_dbm = fmin (fmax (radio->power_dbm, low), high);
-}
-
-static const UtPlan *
-with_radios (const UtPlan *plan, void (*change) (UtRadio *radio, double by), double by)
-{
-  const UtPlan *changed = ut_plan_ref (plan);
-
-  for (guint i = 0; i < plan->cells->len + plan->terminals->len; i++)
-    {
-      const UtPlan *next;
-
-      if (i < plan->cells->len)
-        {
-          UtCell *cell = ut_cell_copy (ut_plan_cell (plan, i));
-
-          change (&cell->radio, by);
-          next = ut_plan_with_cell (changed, (int) i, cell);
-        }
-      else
-        {
-          UtTerminal *terminal = ut_terminal_copy (ut_plan_terminal (plan, i - plan->cells->len));
-
-          change (&terminal->radio, by);
-          next = ut_plan_with_terminal (changed, (int) (i - plan->cells->len), terminal);
-        }
-      ut_plan_unref (changed);
-      changed = next;
-    }
-  return changed;
+  return TRUE;
 }
 
 double
@@ -57,41 +30,35 @@ ut_commissioning_dbm (const UtCommissioning *commissioning, guint transmitter)
   return isnan (commissioning->ladder_db) ? ceil (power_dbm * 100 - 1e-7) / 100 : power_dbm;
 }
 
-/* Every power set to what is typed in; whatever limits say, the question is only whether links are met. */
+/* What is typed into a sender, by its id. */
 static gboolean
-keeps (const UtCommissioning *commissioning)
+type_in (UtRadio *radio, gconstpointer user)
 {
-  UtStudy *study = commissioning->study;
-  UtQuestion as_set = { .direction = study->question.direction, .aim = UT_AIM_AS_SET };
-  const UtPlan *plan = ut_plan_ref (study->gains->plan);
-  gboolean kept = TRUE;
+  const UtCommissioning *commissioning = user;
+  const UtStudy *study = commissioning->study;
 
   for (guint i = 0; i < study->transmitters->len; i++)
     {
       const UtTransmitterAnswer *sender = ut_study_transmitter (study, i);
-      double power_dbm = ut_commissioning_dbm (commissioning, i);
-      const UtPlan *next;
+      const UtRadio *own = sender->is_cell ? &ut_plan_cell (study->gains->plan, sender->index)->radio : &ut_plan_terminal (study->gains->plan, sender->index)->radio;
 
-      if (isnan (power_dbm))
+      if (!g_str_equal (own->id, radio->id) || isnan (sender->power_dbm))
         continue;
-      if (sender->is_cell)
-        {
-          UtCell *cell = ut_cell_copy (ut_plan_cell (plan, sender->index));
-
-          cell->radio.power_dbm = power_dbm;
-          next = ut_plan_with_cell (plan, (int) sender->index, cell);
-        }
-      else
-        {
-          UtTerminal *terminal = ut_terminal_copy (ut_plan_terminal (plan, sender->index));
-
-          terminal->radio.power_dbm = power_dbm;
-          next = ut_plan_with_terminal (plan, (int) sender->index, terminal);
-        }
-      ut_plan_unref (plan);
-      plan = next;
+      radio->power_dbm = ut_commissioning_dbm (commissioning, i);
+      return TRUE;
     }
-  g_autoptr (UtPlan) typed = (UtPlan *) plan;
+  return FALSE;
+}
+
+/* Every power set to what is typed in; whatever limits say, the question is only whether links are met. */
+static gboolean
+keeps (const UtCommissioning *commissioning)
+{
+  const UtStudy *study = commissioning->study;
+  UtQuestion as_set = { .direction = study->question.direction, .aim = UT_AIM_AS_SET };
+  g_autoptr (UtPlan) typed = (UtPlan *) ut_plan_with_each_radio (study->gains->plan, type_in, commissioning);
+  gboolean kept = TRUE;
+
   g_autoptr (UtStudy) again = ut_study_new (typed, &as_set, study);
   for (guint i = 0; i < study->links->len; i++)
     kept = kept && (!(ut_study_link (study, i)->margin_db >= UT_MARGIN_MET_DB) || ut_study_link (again, i)->margin_db >= UT_MARGIN_MET_DB);
@@ -108,7 +75,7 @@ ut_commissioning_make (const UtStudy *study, UtCommissioning *commissioning)
   *commissioning = (UtCommissioning){ .ladder_db = NAN, .shared = shared };
   for (gsize i = 0; i < G_N_ELEMENTS (ladders_db) && climbs && commissioning->study == NULL; i++)
     {
-      g_autoptr (UtPlan) plan = (UtPlan *) with_radios (study->gains->plan, put_on_ladder, ladders_db[i]);
+      g_autoptr (UtPlan) plan = (UtPlan *) ut_plan_with_each_radio (study->gains->plan, put_on_ladder, &ladders_db[i]);
       g_autoptr (UtStudy) on_ladder = ut_study_new (plan, &study->question, study);
 
       if (on_ladder->verdict == UT_VERDICT_MET && on_ladder->fallback == UT_FALLBACK_NONE)

@@ -125,8 +125,7 @@ with_all_targets_lower (const Search *search, double by_db)
     {
       const UtPlan *next = with_target_lower (search, plan, ut_study_link (search->study, i)->terminal, by_db);
 
-      ut_plan_unref (plan);
-      plan = next;
+      ut_plan_step (&plan, next);
     }
   return plan;
 }
@@ -163,8 +162,7 @@ with_cell_off (const Search *search, guint index)
       {
         const UtPlan *next = with_serving_cell (plan, t, NULL);
 
-        ut_plan_unref (plan);
-        plan = next;
+        ut_plan_step (&plan, next);
       }
   return plan;
 }
@@ -492,8 +490,7 @@ try_raise_limits (Search *search)
         double dbm = ut_dbm_from_mw (mw[i]) + AMOUNT_DB / 10;
         const UtPlan *next = with_transmitter (search, plan, i, dbm, 0);
 
-        ut_plan_unref (plan);
-        plan = next;
+        ut_plan_step (&plan, next);
         g_array_append_val (transmitters, i);
         g_array_append_val (to_dbm, dbm);
       }
@@ -521,8 +518,7 @@ try_pads_at (Search *search, const guint *transmitters, guint n)
         {
           const UtPlan *next = with_transmitter (search, plan, transmitters[i], NAN, pads_db[k]);
 
-          ut_plan_unref (plan);
-          plan = next;
+          ut_plan_step (&plan, next);
         }
       remedy = try_plan (search, UT_REMEDY_PADS, plan);
       if (remedy != NULL)

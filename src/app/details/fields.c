@@ -621,8 +621,7 @@ with_lines (const UtPlan *plan, const Row *row, UtSubject subject, const char *i
     {
       const UtPlan *next = with_line (with, row, subject, lines[i], text, refusal);
 
-      ut_plan_unref (with);
-      with = next;
+      ut_plan_step (&with, next);
     }
   return with;
 }

@@ -106,8 +106,7 @@ plan_in_round (const UtControl *control, guint round)
           terminal->radio.power_dbm = power_dbm;
           next = ut_plan_with_terminal (plan, (int) index, terminal);
         }
-      ut_plan_unref (plan);
-      plan = next;
+      ut_plan_step (&plan, next);
     }
   return plan;
 }
