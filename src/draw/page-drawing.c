@@ -80,6 +80,96 @@ ut_page_drawings (const UtPlan *plan, const UtPageSetup *setup, GArray *drawings
   return best;
 }
 
+/* ---- grid references ---- */
+
+#define LEAST_SQUARE_MM 14.0
+
+gboolean
+ut_page_grid (const UtPlan *plan, const UtPageSetup *setup, UtPageGrid *grid)
+{
+  static const double steps[] = { 1, 2, 5 };
+  double scale = ut_page_drawings (plan, setup, NULL), low_x = INFINITY, low_y = INFINITY;
+
+  for (guint s = 0; s < plan->storeys->len; s++)
+    {
+      double x0, y0, x1, y1;
+
+      if (!ut_plan_extent (plan, s, &x0, &y0, &x1, &y1))
+        continue;
+      low_x = fmin (low_x, x0);
+      low_y = fmin (low_y, y0);
+    }
+  if (!(scale > 0) || !isfinite (low_x))
+    return FALSE;
+  grid->step_m = 0;
+  for (double decade = 0.1; !(grid->step_m > 0); decade *= 10)
+    for (gsize i = 0; i < G_N_ELEMENTS (steps) && !(grid->step_m > 0); i++)
+      if (steps[i] * decade * 1e3 / scale >= LEAST_SQUARE_MM)
+        grid->step_m = steps[i] * decade;
+  grid->x0_m = floor (low_x / grid->step_m) * grid->step_m;
+  grid->y0_m = floor (low_y / grid->step_m) * grid->step_m;
+  return TRUE;
+}
+
+/* A .. Z, AA, AB, ... */
+static char *
+letters (guint index)
+{
+  g_autofree char *before = index >= 26 ? letters (index / 26 - 1) : g_strdup ("");
+
+  return g_strdup_printf ("%s%c", before, 'A' + (int) (index % 26));
+}
+
+char *
+ut_page_grid_ref (const UtPageGrid *grid, double x_m, double y_m)
+{
+  double column = floor ((x_m - grid->x0_m) / grid->step_m + 1e-9), row = floor ((y_m - grid->y0_m) / grid->step_m + 1e-9);
+
+  if (!(column >= 0 && row >= 0 && column < 1e4 && row < 1e4))
+    return g_strdup ("");
+  g_autofree char *letter = letters ((guint) column);
+  return g_strdup_printf ("%s%.0f", letter, row + 1);
+}
+
+/* Ticks and names of the squares along the lower and left edge of a frame. */
+static void
+draw_grid_refs (cairo_t *cr, const UtPageGrid *grid, const UtPageDrawing *drawing, double scale)
+{
+  const UtBox *frame = &drawing->frame_mm;
+  double step_mm = grid->step_m * 1e3 / scale, x_mm = drawing->origin_x_mm + grid->x0_m * 1e3 / scale, y_mm = drawing->origin_y_mm - grid->y0_m * 1e3 / scale, size = 1.9;
+
+  cairo_set_source_rgb (cr, 0, 0, 0);
+  cairo_set_line_width (cr, 0.15);
+  for (guint i = 0; x_mm + i * step_mm < frame->x + frame->width; i++)
+    {
+      g_autofree char *name = letters (i);
+      double at = x_mm + i * step_mm, middle = at + step_mm / 2;
+
+      if (at > frame->x)
+        {
+          cairo_move_to (cr, at, frame->y + frame->height);
+          cairo_line_to (cr, at, frame->y + frame->height - 2);
+          cairo_stroke (cr);
+        }
+      if (middle > frame->x + 2 && middle < frame->x + frame->width - 2)
+        ut_text_draw (cr, name, middle - ut_text_width (name, size) / 2, frame->y + frame->height - 2.6, size, &black, NULL);
+    }
+  for (guint i = 0; y_mm - i * step_mm > frame->y; i++)
+    {
+      g_autofree char *name = g_strdup_printf ("%u", i + 1);
+      double at = y_mm - i * step_mm, middle = at - step_mm / 2;
+
+      if (at < frame->y + frame->height)
+        {
+          cairo_move_to (cr, frame->x, at);
+          cairo_line_to (cr, frame->x + 2, at);
+          cairo_stroke (cr);
+        }
+      if (middle > frame->y + CAPTION_MM && middle < frame->y + frame->height - 4)
+        ut_text_draw (cr, name, frame->x + 0.6, middle - 0.65 * size, size, &black, NULL);
+    }
+}
+
 /* A round length of about a quarter of the width, with its quarters marked. */
 static void
 draw_scale_bar (cairo_t *cr, double x, double y, double scale)
@@ -124,7 +214,7 @@ draw_north (cairo_t *cr, double x, double y, double north_deg)
 }
 
 static void
-draw_storey (cairo_t *cr, const UtStudy *study, const UtPageDrawing *drawing, double scale)
+draw_storey (cairo_t *cr, const UtStudy *study, const UtPageDrawing *drawing, double scale, const UtPageGrid *grid)
 {
   const UtPlan *plan = study->gains->plan;
   const UtStorey *storey = ut_plan_storey (plan, drawing->storey);
@@ -150,6 +240,7 @@ draw_storey (cairo_t *cr, const UtStudy *study, const UtPageDrawing *drawing, do
   cairo_set_source_rgb (cr, 0, 0, 0);
   cairo_stroke (cr);
   ut_paint_plan (cr, plan, study, &options);
+  draw_grid_refs (cr, grid, drawing, scale);
   ut_text_place (cr, caption, &style, drawing->frame_mm.x + 2, drawing->frame_mm.y + 1.2, &black, &ut_palette_paper.sheet);
   cairo_restore (cr);
 }
@@ -160,8 +251,10 @@ ut_page_draw_drawings (cairo_t *cr, const UtStudy *study, const UtPageSetup *set
   g_autoptr (GArray) drawings = g_array_new (FALSE, FALSE, sizeof (UtPageDrawing));
   double scale = ut_page_drawings (study->gains->plan, setup, drawings);
 
-  for (guint i = 0; i < drawings->len; i++)
-    draw_storey (cr, study, &g_array_index (drawings, UtPageDrawing, i), scale);
+  UtPageGrid grid;
+
+  for (guint i = 0; i < drawings->len && ut_page_grid (study->gains->plan, setup, &grid); i++)
+    draw_storey (cr, study, &g_array_index (drawings, UtPageDrawing, i), scale, &grid);
 }
 
 /* Margin classes, then constructions, as many as fit; scale and north to the left. */

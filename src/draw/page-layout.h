@@ -18,7 +18,7 @@ double ut_page_table_height (guint n_rows);
 void ut_page_draw_drawings (cairo_t *cr, const UtStudy *study, const UtPageSetup *setup);
 void ut_page_draw_key (cairo_t *cr, const UtPlan *plan, const UtBox *box, double scale);
 /* With the powers that are to be typed in, and what they give. */
-void ut_page_draw_tables (cairo_t *cr, const UtCommissioning *commissioning, const UtBox *box, gboolean side_by_side);
+void ut_page_draw_tables (cairo_t *cr, const UtCommissioning *commissioning, const UtPageSetup *setup, const UtBox *box);
 void ut_page_draw_notes (cairo_t *cr, const UtStudy *study, const UtBox *box);
 
 /* A figure for paper: with a real minus sign. */

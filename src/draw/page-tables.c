@@ -110,8 +110,8 @@ say_left_out (Table *table, guint n, const char *what)
 
 /* The distance to keep off is at full power. */
 static const Column power_columns[] = {
-  { "Radio", 0.1, FALSE }, { "Name", 0.25, FALSE }, { "x m", 0.1, TRUE }, { "y m", 0.1, TRUE }, { "h m", 0.07, TRUE },
-  { "Ch.", 0.06, TRUE },   { "dBm", 0.12, TRUE },   { "EIRP", 0.1, TRUE }, { "Off m", 0.1, TRUE },
+  { "Radio", 0.09, FALSE }, { "Name", 0.205, FALSE }, { "Grid", 0.075, FALSE }, { "x m", 0.095, TRUE }, { "y m", 0.095, TRUE },
+  { "h m", 0.07, TRUE },    { "Ch.", 0.06, TRUE },    { "dBm", 0.115, TRUE },   { "EIRP", 0.1, TRUE },  { "Off m", 0.095, TRUE },
 };
 
 /* The planner's own columns of a radio: "; cable tag A-07". */
@@ -156,11 +156,14 @@ lines_of (const UtStudy *study)
 }
 
 static void
-draw_powers (cairo_t *cr, const UtCommissioning *commissioning, const UtBox *box, guint n)
+draw_powers (cairo_t *cr, const UtCommissioning *commissioning, const UtPageSetup *setup, const UtBox *box, guint n)
 {
   const UtStudy *study = commissioning->study;
   const UtPlan *plan = study->gains->plan;
   Table table = { cr, power_columns, G_N_ELEMENTS (power_columns), box->x, box->y, box->width };
+
+  UtPageGrid grid;
+  gboolean has_grid = ut_page_grid (plan, setup, &grid);
 
   draw_head (&table, "Power plan (dBm conducted, all ports; EIRP; keep off)");
   for (guint i = 0; i < n; i++)
@@ -172,13 +175,14 @@ draw_powers (cairo_t *cr, const UtCommissioning *commissioning, const UtBox *box
       g_autofree char *power = ut_page_figure (power_dbm, 2), *eirp = ut_page_figure (sender->eirp_dbm + power_dbm - sender->power_dbm, 1);
       g_autofree char *off = ut_page_figure (sender->compliance_m, 2), *more = NULL;
       g_autofree char *channel = sender->is_cell ? g_strdup_printf ("%d", ut_plan_cell (plan, sender->index)->channel) : g_strdup ("");
-      char *const texts[] = { radio->id, radio->name, x, y, height, channel, power, eirp, off };
+      g_autofree char *ref = has_grid ? ut_page_grid_ref (&grid, radio->x_m, radio->y_m) : g_strdup ("");
+      char *const texts[] = { radio->id, radio->name, ref, x, y, height, channel, power, eirp, off };
 
       draw_row (&table, texts, FALSE);
       if (lines_of (study) == 1)
         continue;
       more = mounting (plan, radio, sender);
-      ut_text_place (cr, more, &(UtTextStyle){ .size = 0.92 * TEXT_MM, .width = 0.9 * table.width }, table.x + 0.1 * table.width, table.y - 0.1, &black, NULL);
+      ut_text_place (cr, more, &(UtTextStyle){ .size = 0.92 * TEXT_MM, .width = 0.91 * table.width }, table.x + 0.09 * table.width, table.y - 0.1, &black, NULL);
       table.y += ROW_MM;
     }
   say_left_out (&table, study->transmitters->len - n, "radios");
@@ -187,7 +191,8 @@ draw_powers (cairo_t *cr, const UtCommissioning *commissioning, const UtBox *box
 /* ---- links ---- */
 
 static const Column link_columns[] = {
-  { "Term.", 0.1, FALSE }, { "Name", 0.3, FALSE }, { "Cell", 0.09, FALSE }, { "dBm", 0.14, TRUE }, { "Target", 0.12, TRUE }, { "SINR", 0.12, TRUE }, { "Margin", 0.13, TRUE },
+  { "Term.", 0.09, FALSE }, { "Name", 0.235, FALSE }, { "Cell", 0.075, FALSE }, { "dBm", 0.115, TRUE }, { "Target", 0.105, TRUE },
+  { "SINR", 0.095, TRUE },  { "Margin", 0.11, TRUE }, { "Res.", 0.115, TRUE }, { "%", 0.06, TRUE },
 };
 
 typedef struct { double margin_db; guint index; } Order;
@@ -214,14 +219,15 @@ draw_links (cairo_t *cr, const UtStudy *study, const UtBox *box, guint n)
   for (guint i = 0; i < study->links->len; i++)
     g_array_append_val (order, ((Order){ ut_study_link (study, i)->margin_db, i }));
   g_array_sort (order, compare_margins);
-  draw_head (&table, "Links, the tightest first (dB)");
+  draw_head (&table, "Links, the tightest first (dB; % of places)");
   for (guint i = 0; i < n; i++)
     {
       const UtLinkAnswer *link = ut_study_link (study, g_array_index (order, Order, i).index);
       const UtRadio *terminal = &ut_plan_terminal (plan, link->terminal)->radio;
       g_autofree char *power = ut_page_figure (link->power_dbm, 2), *target = ut_page_figure (link->target_db, 1);
       g_autofree char *sinr = ut_page_figure (link->sinr_db, 1), *margin = ut_page_figure (link->margin_db, 1);
-      char *const texts[] = { terminal->id, terminal->name, link->cell < 0 ? (char *) "–" : ut_plan_cell (plan, (guint) link->cell)->radio.id, power, target, sinr, margin };
+      g_autofree char *reserve = ut_page_figure (link->reserve_db, 1), *chance = isfinite (link->chance) ? ut_page_figure (100 * link->chance, 0) : g_strdup ("");
+      char *const texts[] = { terminal->id, terminal->name, link->cell < 0 ? (char *) "–" : ut_plan_cell (plan, (guint) link->cell)->radio.id, power, target, sinr, margin, reserve, chance };
 
       draw_row (&table, texts, FALSE);
     }
@@ -238,13 +244,13 @@ senders_that_fit (const UtStudy *study, double room_mm)
 
 /* Under each other, or side by side where the page is upright; the power plan gets at most half of the height before links are cut. */
 void
-ut_page_draw_tables (cairo_t *cr, const UtCommissioning *commissioning, const UtBox *box, gboolean side_by_side)
+ut_page_draw_tables (cairo_t *cr, const UtCommissioning *commissioning, const UtPageSetup *setup, const UtBox *box)
 {
   const UtStudy *study = commissioning->study;
   guint senders = study->transmitters->len, links = study->links->len, n_senders, n_links;
   UtBox powers_box = *box, links_box = *box;
 
-  if (side_by_side)
+  if (setup->orientation == UT_PORTRAIT)
     {
       powers_box.width = box->width * 0.52;
       links_box.x = box->x + box->width * 0.54;
@@ -260,6 +266,6 @@ ut_page_draw_tables (cairo_t *cr, const UtCommissioning *commissioning, const Ut
       links_box.y = box->y + ut_page_table_height (lines_of (study) * n_senders) + (n_senders < senders ? ROW_MM : 0) + 4;
       n_links = rows_that_fit (links, box->y + box->height - links_box.y);
     }
-  draw_powers (cr, commissioning, &powers_box, n_senders);
+  draw_powers (cr, commissioning, setup, &powers_box, n_senders);
   draw_links (cr, study, &links_box, n_links);
 }

@@ -159,7 +159,8 @@ assumptions (const UtStudy *study)
   const UtPropagation *propagation = plan->propagation;
   g_autofree char *law = ut_study_law_text (study);
   g_autofree char *model_error = propagation->shadowing_db > 0
-                                   ? g_strdup_printf ("Each gain is a median; single links scatter about it by some ±%g dB.", propagation->shadowing_db)
+                                   ? g_strdup_printf ("Each gain is a median; single links scatter about it by some ±%g dB; %% is the part of such places that keeps its target, to first order.",
+                                                     propagation->shadowing_db)
                                    : g_strdup ("Each gain is a median; single links scatter about it.");
   g_autofree char *eirp = isnan (carrier->eirp_limit_dbm) ? g_strdup ("none entered") : g_strdup_printf ("%g dBm", carrier->eirp_limit_dbm);
 
@@ -224,7 +225,7 @@ ut_compose_page (cairo_t *cr, const UtStudy *study, const UtPageSetup *setup)
   draw_verdict (cr, study, &layout.verdict);
   ut_page_draw_drawings (cr, study, setup);
   ut_page_draw_key (cr, study->gains->plan, &layout.key, ut_page_drawings (study->gains->plan, setup, NULL));
-  ut_page_draw_tables (cr, &commissioning, &layout.tables, setup->orientation == UT_PORTRAIT);
+  ut_page_draw_tables (cr, &commissioning, setup, &layout.tables);
   ut_commissioning_clear (&commissioning);
   ut_page_draw_notes (cr, study, &layout.notes);
 }

@@ -36,5 +36,14 @@ typedef struct
 /* The drawings of a page: their common scale, 0 when there is nothing to draw; drawings (of UtPageDrawing) may be NULL. */
 double ut_page_drawings (const UtPlan *plan, const UtPageSetup *setup, GArray *drawings);
 
+/* The grid that places on the page are found by: squares of step_m, lettered from the left (A at x0_m), numbered from below (1 at y0_m), the same on every storey. */
+typedef struct { double step_m, x0_m, y0_m; } UtPageGrid;
+
+/* FALSE: there is nothing to draw. */
+gboolean ut_page_grid (const UtPlan *plan, const UtPageSetup *setup, UtPageGrid *grid);
+
+/* "B3". Transfer full. */
+char *ut_page_grid_ref (const UtPageGrid *grid, double x_m, double y_m);
+
 /* The smallest standard scale (1:10, 1:20, 1:25, 1:50, 1:100, 1:200, 1:250, 1:500, 1:1000, ...) at which this many metres fit into this many millimetres. */
 double ut_page_scale (double length_m, double room_mm);

@@ -252,11 +252,29 @@ test_polar (void)
   cairo_surface_destroy (surface);
 }
 
+/* Squares are lettered and numbered from the lower left, A to Z and on with AA; a place on a line belongs to the square right of it and above. */
+static void
+test_grid_refs (void)
+{
+  UtPageGrid grid = { 10, -20, 5 };
+  static const struct { double x_m, y_m; const char *ref; } places[] = {
+    { -20, 5, "A1" }, { -10.01, 14.99, "A1" }, { -10, 15, "B2" }, { 239.9, 5, "Z1" }, { 240, 5, "AA1" }, { 510, 1005, "BB101" }, { -21, 5, "" },
+  };
+
+  for (gsize i = 0; i < G_N_ELEMENTS (places); i++)
+    {
+      g_autofree char *ref = ut_page_grid_ref (&grid, places[i].x_m, places[i].y_m);
+
+      g_assert_cmpstr (ref, ==, places[i].ref);
+    }
+}
+
 int
 main (int argc, char **argv)
 {
   g_test_init (&argc, &argv, NULL);
   g_test_add_func ("/draw/margin-classes", test_margin_classes);
+  g_test_add_func ("/page/grid-refs", test_grid_refs);
   g_test_add_func ("/draw/text-scales", test_text_scales);
   g_test_add_func ("/draw/labels-apart", test_labels_apart);
   g_test_add_func ("/draw/scales", test_scales);
